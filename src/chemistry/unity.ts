@@ -79,5 +79,5 @@ function mapAmounts<To extends string>(
   change: (amount: number, oxide: Oxide) => number,
 ): Amounts<To> {
   const held = OXIDES.filter((oxide) => amounts[oxide] !== undefined);
-  return Object.fromEntries(held.map((oxide) => [oxide, change(amounts[oxide] ?? 0, oxide)])) as Amounts<To>;
+  return Object.fromEntries(held.map((oxide) => [oxide, change(amounts[oxide] ?? 0, oxide)]));
 }

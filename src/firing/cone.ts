@@ -20,7 +20,7 @@ const HOTTEST_INDEX = 42;
  * coneIndex('05.5'); // -4.5
  */
 export function coneIndex(text: string): number {
-  const found = /^\s*(?:cone\s*)?(0?)(\d{1,2}(?:\.\d{1,4})?)\s*$/i.exec(text);
+  const found = /^\s*(?:cone\s*)?(0?)([1-9]\d?(?:\.\d{1,4})?|0\.\d{1,4})\s*$/i.exec(text);
   const value = Number(found?.[2] ?? Number.NaN);
   const runsBackwards = found?.[1] === '0';
   // '0', '00' and '00.5' name no cone; '0.5' does (between 01 and 1).
@@ -50,7 +50,9 @@ function coneError(text: string): ConeError {
  */
 export function coneText(index: number): string {
   if (!(index >= COLDEST_INDEX && index <= HOTTEST_INDEX)) {
-    throw new RangeError(`cone index must be from ${COLDEST_INDEX} to ${HOTTEST_INDEX}, got ${index}`);
+    throw new RangeError(
+      `cone index must be from ${COLDEST_INDEX} to ${HOTTEST_INDEX}, got ${index}`,
+    );
   }
   const hundredths = Math.round(index * 100) / 100;
   if (hundredths > 0) return String(hundredths);

@@ -1,0 +1,171 @@
+/** Lower triangle of a symmetric matrix, row by row: element (i, j <= i) at i (i + 1) / 2 + j. */
+export type LowerTriangle = Float64Array;
+
+/**
+ * Place of element (row, column) in a lower triangle stored row by row.
+ *
+ * @param row - from 0
+ * @param column - from 0, at most row
+ * @returns index into the triangle
+ * @example
+ * lowerIndex(2, 1); // 4
+ */
+export function lowerIndex(row: number, column: number): number {
+  return (row * (row + 1)) / 2 + column;
+}
+
+/**
+ * Cholesky factor L of a symmetric positive definite matrix, A = L L'.
+ *
+ * @param matrix - lower triangle of A, row by row
+ * @param size - rows of A
+ * @returns lower triangle of L
+ * @throws {RangeError} if A is not positive definite in double precision
+ * @example
+ * Array.from(choleskyFactor(Float64Array.of(4, 2, 5), 2)); // [2, 1, 2]
+ *
+ * Source: G. H. Golub and C. F. Van Loan, Matrix Computations, 4th ed. 2013, algorithm 4.2.1.
+ */
+export function choleskyFactor(matrix: LowerTriangle, size: number): LowerTriangle {
+  const factor = new Float64Array(matrix.length);
+  for (let i = 0; i < size; i++) {
+    const rowI = lowerIndex(i, 0);
+    for (let j = 0; j <= i; j++) {
+      const rowJ = lowerIndex(j, 0);
+      let sum = matrix[rowI + j]!;
+      for (let k = 0; k < j; k++) sum -= factor[rowI + k]! * factor[rowJ + k]!;
+      if (j < i) {
+        factor[rowI + j] = sum / factor[rowJ + j]!;
+      } else if (sum > 0 && sum < Infinity) {
+        factor[rowI + i] = Math.sqrt(sum);
+      } else {
+        throw new RangeError(`matrix must be positive definite, pivot ${i} is ${sum}`);
+      }
+    }
+  }
+  return factor;
+}
+
+/**
+ * Solves L y = b.
+ *
+ * @param factor - lower triangle of L
+ * @param rightSide - b
+ * @returns y
+ * @example
+ * Array.from(solveLower(Float64Array.of(2, 1, 2), [2, 5])); // [1, 2]
+ */
+export function solveLower(factor: LowerTriangle, rightSide: ArrayLike<number>): Float64Array {
+  const size = rightSide.length;
+  const solution = new Float64Array(size);
+  for (let i = 0; i < size; i++) {
+    const row = lowerIndex(i, 0);
+    let sum = rightSide[i]!;
+    for (let k = 0; k < i; k++) sum -= factor[row + k]! * solution[k]!;
+    solution[i] = sum / factor[row + i]!;
+  }
+  return solution;
+}
+
+/**
+ * Solves L' x = y.
+ *
+ * @param factor - lower triangle of L
+ * @param rightSide - y
+ * @returns x
+ * @example
+ * Array.from(solveUpper(Float64Array.of(2, 1, 2), [4, 4])); // [1, 2]
+ */
+export function solveUpper(factor: LowerTriangle, rightSide: ArrayLike<number>): Float64Array {
+  const size = rightSide.length;
+  const solution = new Float64Array(size);
+  for (let i = size - 1; i >= 0; i--) {
+    let sum = rightSide[i]!;
+    for (let k = i + 1; k < size; k++) sum -= factor[lowerIndex(k, i)]! * solution[k]!;
+    solution[i] = sum / factor[lowerIndex(i, i)]!;
+  }
+  return solution;
+}
+
+/**
+ * Solves A x = b, given the Cholesky factor of A.
+ *
+ * @param factor - lower triangle of L, A = L L'
+ * @param rightSide - b
+ * @returns x
+ * @example
+ * Array.from(choleskySolve(Float64Array.of(2, 1, 2), [8, 12])); // [1, 2]
+ */
+export function choleskySolve(factor: LowerTriangle, rightSide: ArrayLike<number>): Float64Array {
+  return solveUpper(factor, solveLower(factor, rightSide));
+}
+
+/**
+ * ln |A|, given the Cholesky factor of A.
+ *
+ * @param factor - lower triangle of L, A = L L'
+ * @param size - rows of A
+ * @returns natural logarithm of the determinant
+ * @example
+ * choleskyLogDeterminant(Float64Array.of(2, 1, 2), 2); // ~2.772589
+ */
+export function choleskyLogDeterminant(factor: LowerTriangle, size: number): number {
+  let sum = 0;
+  for (let i = 0; i < size; i++) sum += Math.log(factor[lowerIndex(i, i)]!);
+  return 2 * sum;
+}
+
+/**
+ * Inverse of A, given its Cholesky factor: the covariance that goes with a precision.
+ *
+ * @param factor - lower triangle of L, A = L L'
+ * @param size - rows of A
+ * @returns lower triangle of the inverse of A
+ * @example
+ * Array.from(choleskyInverse(Float64Array.of(2, 0, 4), 2)); // [0.25, 0, 0.0625]
+ */
+export function choleskyInverse(factor: LowerTriangle, size: number): LowerTriangle {
+  const inverse = new Float64Array(factor.length);
+  for (let column = 0; column < size; column++) {
+    const unit = new Float64Array(size);
+    unit[column] = 1;
+    const solution = choleskySolve(factor, unit);
+    for (let row = column; row < size; row++) inverse[lowerIndex(row, column)] = solution[row]!;
+  }
+  return inverse;
+}
+
+/**
+ * x' A x for a symmetric A: the variance of a weighted sum, where A is the covariance.
+ *
+ * @param lower - lower triangle of A
+ * @param x - weights of the sum
+ * @returns the value; never below 0 for a covariance, up to rounding
+ * @example
+ * quadraticForm(Float64Array.of(4, 1, 9), [1, 2]); // 44
+ */
+export function quadraticForm(lower: ArrayLike<number>, x: ArrayLike<number>): number {
+  let sum = 0;
+  for (let i = 0; i < x.length; i++) {
+    const row = lowerIndex(i, 0);
+    let inner = 0;
+    for (let j = 0; j < i; j++) inner += lower[row + j]! * x[j]!;
+    sum += x[i]! * (2 * inner + lower[row + i]! * x[i]!);
+  }
+  return sum;
+}
+
+/**
+ * Sum of products of two equally long lists.
+ *
+ * @param a - first list
+ * @param b - second list
+ * @returns the sum
+ * @example
+ * dot([1, 2], [3, 4]); // 11
+ */
+export function dot(a: ArrayLike<number>, b: ArrayLike<number>): number {
+  let sum = 0;
+  for (let i = 0; i < a.length; i++) sum += a[i]! * b[i]!;
+  return sum;
+}
