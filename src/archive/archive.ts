@@ -71,6 +71,7 @@ export interface WitnessReading {
   readonly shelf: string;
   readonly cone: string;
   readonly coneIndex: number;
+  readonly other?: Readonly<Record<string, string>>;
 }
 
 export interface RecipeLine {
@@ -79,6 +80,7 @@ export interface RecipeLine {
   /** Weighed on top of the hundred (colourants and the like). It counts in the formula all the same. */
   readonly over100: boolean;
   readonly line: number;
+  readonly other?: Readonly<Record<string, string>>;
 }
 
 export interface Recipe {

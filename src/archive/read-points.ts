@@ -1,0 +1,52 @@
+import type { Unity } from '../chemistry/unity.ts';
+import { ArchiveError, type Fault } from '../errors.ts';
+import { requiredNameCell } from './cells.ts';
+import { missingOxides, oxideColumns, unityOfCells } from './composition-cells.ts';
+import { collectByName } from './register.ts';
+import { readSheet, type CellStyle } from './sheet.ts';
+import { OXIDES } from '../chemistry/oxides.ts';
+
+const columns = ({ mark }: CellStyle) => ({
+  point: requiredNameCell('a name for the point'),
+  ...oxideColumns(mark),
+});
+
+const pointKind = {
+  name: 'points',
+  columns,
+  numbers: OXIDES,
+  missing: (has: (column: string) => boolean) => [
+    ...(has('point') ? [] : [{ column: 'point', message: 'expected this column, found none' }]),
+    ...missingOxides(has),
+  ],
+};
+
+/**
+ * Compositions to ask about: a CSV with a column `point` and oxides in moles, read by the rules of
+ * tiles.csv.
+ *
+ * @param file - name of the file, for messages
+ * @param bytes - what it holds
+ * @returns the points in the order of the file, as unity formulas
+ * @throws {ArchiveError} with every fault, also if there is no point
+ * @example
+ * const csv = 'point,SiO2,Al2O3,CaO\nP0,7,0.8,2\n';
+ * readPoints('points.csv', new TextEncoder().encode(csv))[0].unity.SiO2; // 3.5
+ */
+export function readPoints(file: string, bytes: Uint8Array): { point: string; unity: Unity }[] {
+  const sheet = readSheet(file, bytes, pointKind);
+  const isWhole = sheet.headFaults.length === 0;
+  const rows = sheet.rows.map(({ line, values, faults: cellFaults }) => {
+    const unread = new Set(cellFaults.map(({ column }) => column));
+    const read = unityOfCells(values, (column) => unread.has(column), sheet.has);
+    const found = 'faults' in read && isWhole ? read.faults : [];
+    const faults = [...cellFaults, ...found.map((fault) => ({ file, line, ...fault }))];
+    const value = 'unity' in read && faults.length === 0 ? read.unity : undefined;
+    return { name: values.point, line, value, faults };
+  });
+  const { sound, faults } = collectByName(rows, file, 'point');
+  const empty: Fault = { file, line: 0, column: '', message: 'expected a point, got none' };
+  const all = [...sheet.headFaults, ...faults, ...(rows.length === 0 && isWhole ? [empty] : [])];
+  if (all.length > 0) throw new ArchiveError(all.sort((a, b) => a.line - b.line));
+  return [...sound].map(([point, unity]) => ({ point, unity }));
+}

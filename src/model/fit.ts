@@ -1,0 +1,73 @@
+import type { Archive } from '../archive/archive.ts';
+import { coneText } from '../firing/cone.ts';
+import type { Model, Validation } from './model.ts';
+import { fitStages, isJudged, stageOf, type JudgedTile } from './stages.ts';
+import { validation } from './validation.ts';
+
+export interface FitOptions {
+  /** Version of coneshift, kept in the model. */
+  readonly madeBy?: string;
+}
+
+/** Fewer tiles than this on one side of a boundary leave it mostly to the prior. */
+const FEW_TILES = 10;
+/** Cones that the tool is asked about first. */
+const MAIN_CONES = [5, 6, 7];
+
+/**
+ * Learns from an archive where the surfaces lie.
+ *
+ * Works with any number of judged tiles, none included: the answer is then the prior's.
+ * The same archive gives the same model to the last bit, in any order of its rows.
+ *
+ * @param archive - archive as read
+ * @param options - version to note
+ * @returns the model, with how it holds on tiles that were left out
+ */
+export function fitModel(archive: Archive, { madeBy = 'coneshift' }: FitOptions = {}): Model {
+  const tiles = archive.tiles.filter(isJudged);
+  const fits = fitStages(tiles);
+  const named = new Set(tiles.flatMap(({ firing, load }) => (firing === undefined ? [] : [load])));
+  const account = validation(tiles, fits);
+  return {
+    schema: 'coneshift.model/1',
+    madeBy,
+    archive,
+    melt: stageOf('melt', fits.melt, named),
+    gloss: stageOf('gloss', fits.gloss, named),
+    validation: account,
+    notes: fitNotes(tiles, account),
+  };
+}
+
+function fitNotes(tiles: readonly JudgedTile[], { byCone, notes }: Validation): string[] {
+  const count = (...wanted: JudgedTile['verdict'][]) =>
+    tiles.filter(({ verdict }) => wanted.includes(verdict)).length;
+  const sides = [
+    ['underfired', count('underfired'), 'melt'],
+    ['melted', count('matte', 'gloss', 'melted'), 'melt'],
+    ['matte', count('matte'), 'gloss'],
+    ['gloss', count('gloss'), 'gloss'],
+  ] as const;
+  const few = sides
+    .filter(([, tilesOnSide]) => tilesOnSide < FEW_TILES)
+    .map(
+      ([side, tilesOnSide, boundary]) =>
+        `${tilesOnSide} tiles judged ${side} (fewer than ${FEW_TILES}): the ${boundary} boundary ` +
+        'rests mostly on what is usual elsewhere; fire and judge more of that side',
+    );
+  const unseen = MAIN_CONES.filter(
+    (cone) => !tiles.some(({ heat }) => Math.abs(heat.coneIndex - cone) <= 0.5),
+  ).map(
+    (cone) =>
+      `no judged tile at cone ${coneText(cone)}: answers there are carried over from other cones`,
+  );
+  const oneCone = byCone.folds === 0 && tiles.length > 0;
+  return [
+    ...few,
+    ...unseen,
+    ...(oneCone ? ['all tiles are of one cone: how the model holds by cone cannot be tested'] : []),
+    ...notes,
+    'an error that all loads share (a kiln that always fires cool) cannot be seen in the tiles',
+  ];
+}

@@ -1,0 +1,152 @@
+import { mean } from '../numeric/summary.ts';
+import { coneText } from '../firing/cone.ts';
+import { foldsByCone, foldsByGlaze, foldsByLoad, type Fold } from './folds.ts';
+import { stageLogOdds, surfaceProbability } from './log-odds.ts';
+import {
+  SURFACES,
+  type HeldOut,
+  type ReliabilityRow,
+  type SurfaceProbability,
+  type Validation,
+} from './model.ts';
+import { fitStages, sdsOf, stageOf, type JudgedTile, type StageFits } from './stages.ts';
+
+/** A tile predicted by a fit that did not see it. */
+interface Prediction {
+  readonly fold: string;
+  readonly verdict: JudgedTile['verdict'];
+  readonly probability: SurfaceProbability;
+  readonly baseRate: SurfaceProbability;
+}
+
+/** From this probability on a tile counts as called sure. */
+const SURE = 0.9;
+/** A third is the least that the most probable of three surfaces can have. */
+const RELIABILITY_EDGES = [1 / 3, 0.5, 0.6, 0.7, 0.8, 0.9, 0.95, 1] as const;
+
+/**
+ * How the model holds on tiles that it does not see: by cone, by load, by glaze.
+ *
+ * Every fold is fitted anew, prior sds included, and predictions are averaged over the error of a
+ * load that was not seen. The log score is the mean natural log of the probability given to what was
+ * seen (Gneiting & Raftery, J. Am. Stat. Assoc. 102 (2007) 359-378).
+ *
+ * @param tiles - judged tiles
+ * @param fits - fit on all of them: where the re-estimation of each fold begins
+ * @returns the three accounts
+ */
+export function validation(tiles: readonly JudgedTile[], fits: StageFits): Validation {
+  const cones = foldsByCone(tiles).map((fold) => ({
+    ...fold,
+    leftOut: `cone ${coneText(Number(fold.leftOut))}`,
+  }));
+  return {
+    byCone: heldOut(cones, tiles, fits),
+    byLoad: heldOut(foldsByLoad(tiles), tiles, fits),
+    byGlaze: heldOut(foldsByGlaze(tiles), tiles, fits),
+    notes: validationNotes(tiles),
+  };
+}
+
+function validationNotes(tiles: readonly JudgedTile[]): string[] {
+  const unblended = tiles.filter((tile) => tile.blend === undefined).length;
+  if (unblended < tiles.length || tiles.length === 0) return [];
+  return [
+    'no tile names its blend: neighbours of one line or grid may stand on both sides, and the ' +
+      'figures by glaze then flatter; fill the column "blend" of tiles.csv',
+  ];
+}
+
+function heldOut(folds: readonly Fold[], tiles: readonly JudgedTile[], fits: StageFits): HeldOut {
+  if (folds.length < 2) return NOTHING_HELD_OUT;
+  const predictions = folds.flatMap((fold) => foldPredictions(fold, tiles, fits));
+  const parts = folds.map(({ leftOut }) => {
+    const own = predictions.filter(({ fold }) => fold === leftOut);
+    return { leftOut, tiles: own.length, ...scores(own) };
+  });
+  const judged = predictions.filter(({ verdict }) => verdict !== 'melted');
+  const sure = judged.filter(({ probability }) => highest(probability) >= SURE);
+  return {
+    ...scores(predictions),
+    folds: folds.length,
+    tiles: predictions.length,
+    sure: { called: sure.length, right: sure.filter(isRight).length },
+    reliability: reliability(judged),
+    parts,
+  };
+}
+
+const NOTHING_HELD_OUT: HeldOut = {
+  logScore: null,
+  baseRateLogScore: null,
+  folds: 0,
+  tiles: 0,
+  sure: { called: 0, right: 0 },
+  reliability: reliability([]),
+  parts: [],
+};
+
+function foldPredictions(fold: Fold, tiles: readonly JudgedTile[], fits: StageFits): Prediction[] {
+  const out = new Set(fold.tiles);
+  const kept = tiles.filter((tile) => !out.has(tile));
+  const refit = fitStages(kept, { startSds: sdsOf(fits) });
+  const melt = stageOf('melt', refit.melt, new Set());
+  const gloss = stageOf('gloss', refit.gloss, new Set());
+  const rates = baseRates(kept);
+  return fold.tiles.map(({ unity, heat, verdict }) => ({
+    fold: fold.leftOut,
+    verdict,
+    probability: surfaceProbability(
+      stageLogOdds(melt, unity, heat.coneIndex, melt.loadSd),
+      stageLogOdds(gloss, unity, heat.coneIndex, gloss.loadSd),
+    ),
+    baseRate: rates,
+  }));
+}
+
+/** Shares of the surfaces among the tiles; half a tile more on each side keeps them off 0. */
+function baseRates(tiles: readonly JudgedTile[]): SurfaceProbability {
+  const count = (wanted: JudgedTile['verdict']) =>
+    tiles.filter(({ verdict }) => verdict === wanted).length;
+  const underfired = (count('underfired') + 0.5) / (tiles.length + 1);
+  const gloss = (count('gloss') + 0.5) / (count('gloss') + count('matte') + 1);
+  return { underfired, matte: (1 - underfired) * (1 - gloss), gloss: (1 - underfired) * gloss };
+}
+
+function scores(predictions: readonly Prediction[]) {
+  const score = (of: 'probability' | 'baseRate') =>
+    mean(predictions.map((p) => Math.log(probabilityOf(p[of], p.verdict))));
+  return { logScore: score('probability'), baseRateLogScore: score('baseRate') };
+}
+
+/** A tile judged melted only may be matte or gloss. Underflow is kept off the logarithm. */
+function probabilityOf(given: SurfaceProbability, verdict: JudgedTile['verdict']): number {
+  const probability = verdict === 'melted' ? given.matte + given.gloss : given[verdict];
+  return Math.max(probability, Number.MIN_VALUE);
+}
+
+function highest(probability: SurfaceProbability): number {
+  return Math.max(...SURFACES.map((surface) => probability[surface]));
+}
+
+function isRight({ probability, verdict }: Prediction): boolean {
+  return verdict !== 'melted' && probability[verdict] === highest(probability);
+}
+
+function reliability(predictions: readonly Prediction[]): ReliabilityRow[] {
+  return RELIABILITY_EDGES.slice(1).map((to, i) => {
+    const from = RELIABILITY_EDGES[i]!;
+    const last = to === 1;
+    const own = predictions.filter(({ probability }) => {
+      const stated = highest(probability);
+      return stated >= from && (stated < to || last);
+    });
+    return {
+      from,
+      to,
+      tiles: own.length,
+      stated: own.length === 0 ? null : mean(own.map(({ probability }) => highest(probability))),
+      right: own.length === 0 ? null : own.filter(isRight).length / own.length,
+    };
+  });
+}
