@@ -1,5 +1,5 @@
-import { logit, sigmoid } from './logistic.ts';
-import { normalCdf, normalQuantile } from './normal.ts';
+import { log1pExp, logit, sigmoid } from './logistic.ts';
+import { normalCdf, normalDensity, normalQuantile } from './normal.ts';
 import { normalMean } from './quadrature.ts';
 import { findRoot } from './roots.ts';
 
@@ -45,21 +45,15 @@ export function probabilityQuantile({ mean, sd }: GaussianLogOdds, p: number): n
   return sigmoid(sd === 0 ? mean : mean + sd * normalQuantile(p));
 }
 
-/** Nodes of the outer integral of the product's distribution, in z. */
-const PRODUCT_STEP = 1 / 16;
-/** Log-odds beyond which a probability is 0 or 1 to 1e-15. */
-const FARTHEST_LOG_ODDS = 35;
-
 /**
  * Quantile of the product of two independent probabilities with Gaussian log-odds.
  *
- * The distribution of the product is an integral over the less certain one's conditional normal
- * distribution; the quantile is its root, not the product of two quantiles.
+ * It is the root of the product's distribution, not the product of two quantiles.
  *
  * @param first - mean and sd of the first log-odds
  * @param second - mean and sd of the second, independent of the first
  * @param p - which quantile, 0 to 1 exclusive
- * @returns probability in [0, 1]; error below 1e-6 for sds of 0.05 to 6
+ * @returns probability in [0, 1]; absolute error below 1e-8 for sds from 0.02 to 20
  * @example
  * productQuantile({ mean: 1, sd: 0.5 }, { mean: 2, sd: 0 }, 0.5); // ~0.6439
  */
@@ -69,17 +63,49 @@ export function productQuantile(
   p: number,
 ): number {
   const [outer, inner] = first.sd < second.sd ? [first, second] : [second, first];
-  if (inner.sd === 0) return sigmoid(outer.mean) * sigmoid(inner.mean);
-  const share = (logOddsOfProduct: number) =>
-    productCdf(sigmoid(logOddsOfProduct), outer, inner) - p;
-  return sigmoid(findRoot(share, -FARTHEST_LOG_ODDS, FARTHEST_LOG_ODDS, 1e-9));
+  if (outer.sd === 0) return sigmoid(outer.mean) * probabilityQuantile(inner, p);
+  const excess = (logOddsOfProduct: number) => productCdf(logOddsOfProduct, outer, inner) - p;
+  // P(XY < xy) <= P(X < x) + P(Y < y): the quantile lies between these two products.
+  const bound = (each: number) =>
+    logit(probabilityQuantile(outer, each) * probabilityQuantile(inner, each));
+  return sigmoid(findRoot(excess, bound(p / 2), bound((1 + p) / 2), 1e-9));
 }
 
-/** P(outer * inner <= product). */
-function productCdf(product: number, outer: GaussianLogOdds, inner: GaussianLogOdds): number {
-  const given = (z: number) => {
-    const needed = product / sigmoid(outer.mean + outer.sd * z);
-    return needed >= 1 ? 1 : normalCdf((logit(needed) - inner.mean) / inner.sd);
+/** Beyond so many sds of the outer log-odds there is nothing left to integrate. */
+const FARTHEST_SDS = 8;
+/** The integrand falls as exp(v) towards lower v: 4e-11 is left. */
+const LOWEST_V = -24;
+/** Poles lie pi off the real line: a step of 0.6 leaves exp(-2 pi^2 / 0.6) = 5e-15. */
+const WIDEST_STEP = 0.6;
+
+/**
+ * P(X Y <= q) = P(X <= q) + the integral over X > q of P(Y <= q / X).
+ *
+ * With v = ln((X - q) / (1 - X)) the log-odds of X are ln((q + e^v) / (1 - q)) and those of q / X are
+ * ln(q (1 + e^-v) / (1 - q)): both smooth, so the trapezoidal rule converges exponentially.
+ */
+function productCdf(logOddsOfQ: number, outer: GaussianLogOdds, inner: GaussianLogOdds): number {
+  const q = sigmoid(logOddsOfQ);
+  const log1MinusQ = -log1pExp(logOddsOfQ);
+  const below = normalCdf((logOddsOfQ - outer.mean) / outer.sd);
+  const vAt = (logOdds: number) => {
+    const excess = Math.exp(logOdds + log1MinusQ) - q;
+    return excess > 0 ? Math.log(excess) : -Infinity;
   };
-  return outer.sd === 0 ? given(0) : normalMean(given, PRODUCT_STEP);
+  const low = Math.max(
+    LOWEST_V + Math.min(0, Math.log(q)),
+    vAt(outer.mean - FARTHEST_SDS * outer.sd),
+  );
+  const high = vAt(outer.mean + FARTHEST_SDS * outer.sd);
+  if (!(high > low)) return below;
+  const cells = Math.ceil((high - low) / Math.min(WIDEST_STEP, 0.8 * outer.sd));
+  const step = (high - low) / cells;
+  let sum = 0;
+  for (let i = 0; i <= cells; i++) {
+    const power = Math.exp(low + i * step);
+    const x = (Math.log(q + power) - log1MinusQ - outer.mean) / outer.sd;
+    const y = (logOddsOfQ + Math.log1p(1 / power) - inner.mean) / inner.sd;
+    sum += ((normalDensity(x) * power) / (q + power)) * normalCdf(y);
+  }
+  return below + (sum * step) / outer.sd;
 }

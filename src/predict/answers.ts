@@ -71,9 +71,8 @@ export interface PointShift {
   readonly lookedAt: readonly [number, number];
   /** What happens, in a sentence or two. */
   readonly words: string;
-  /** Overfired tiles near this glaze, at its hottest asked cone or cooler. */
+  /** Overfired tiles within the edge radius of this glaze at one of the cones. */
   readonly overfiredNear: readonly NearTile[];
-  readonly notes: readonly string[];
 }
 
 export interface Shift {

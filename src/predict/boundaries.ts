@@ -1,0 +1,216 @@
+import type { Unity } from '../chemistry/unity.ts';
+import { coneText } from '../firing/cone.ts';
+import { columnValues, scaledInputs } from '../model/inputs.ts';
+import { stageLogOdds } from '../model/log-odds.ts';
+import type { Model } from '../model/model.ts';
+import { isJudged, type StageName } from '../model/stages.ts';
+import { findRoot } from '../numeric/roots.ts';
+import type { Boundaries, Boundary, Point } from './answers.ts';
+import { EDGE_STEPS, experienceOf, squaredSteps, type Experience } from './experience.ts';
+import { compositionLines, type CompositionLine } from './lines.ts';
+import { middleComposition } from './middle.ts';
+import {
+  evenNodes,
+  gridZeros,
+  nearestPlace,
+  placePosterior,
+  type Direction,
+  type GridZero,
+  type Place,
+} from './place.ts';
+import { lineRows, logOddsAlong, posteriorDraws, type StageDraws } from './posterior-draws.ts';
+import { modelStamp } from './predict.ts';
+
+export interface BoundariesOptions {
+  /** Composition through which the lines run; the middle of the archive where absent. */
+  readonly through?: Point;
+}
+
+/** Cells of a line; crossings of draws are interpolated between nodes. */
+const CELLS = 120;
+/** The move per cone is taken between half a cone below and half a cone above. */
+const HALF_CONE = 0.5;
+/** Tiles count as near a boundary up to this far in heat. */
+const NEAR_CONES = 0.5;
+
+/** Both stages' posterior draws. */
+type Draws = Readonly<Record<StageName, StageDraws>>;
+
+/**
+ * Where the melt and the gloss boundary cross three lines through a composition, at each cone.
+ *
+ * The melt boundary is where P(melted) = 1/2, the gloss boundary where P(gloss given melted) = 1/2 and
+ * P(melted) is at least 1/2. Intervals are taken over the posterior of the place.
+ *
+ * @param model - fitted model
+ * @param coneIndexes - cones as numbers
+ * @param options - composition through which the lines run
+ * @returns all crossings; one row without a value for a line that does not meet a boundary
+ */
+export function boundaries(
+  model: Model,
+  coneIndexes: readonly number[],
+  { through }: BoundariesOptions = {},
+): Boundaries {
+  const tiles = model.archive.tiles.filter(isJudged);
+  const middle = through ?? middleComposition(tiles);
+  const lines = compositionLines(middle.unity, tiles);
+  const draws = posteriorDraws(model);
+  const experience = experienceOf(tiles);
+  return {
+    schema: 'coneshift.boundaries/1',
+    model: modelStamp(model),
+    through: middle.unity,
+    throughSource: through ? `asked: ${through.point}` : middle.point,
+    boundaries: coneIndexes.flatMap((coneIndex) =>
+      lines.flatMap((line) => lineBoundaries({ model, draws, experience, line, coneIndex })),
+    ),
+    notes: [],
+  };
+}
+
+interface Question {
+  readonly model: Model;
+  readonly draws: Draws;
+  readonly experience: Experience;
+  readonly line: CompositionLine;
+  readonly coneIndex: number;
+}
+
+function lineBoundaries(question: Question): Boundary[] {
+  return (['melt', 'gloss'] as const).flatMap((kind) => {
+    const places = meanCrossings(question, kind, question.coneIndex);
+    return (places.length === 0 ? [overallTrend(question, kind)] : places).map((crossing) =>
+      boundaryRow(question, kind, crossing),
+    );
+  });
+}
+
+/** A crossing of the posterior mean; without a place, which way the line goes over all. */
+interface Crossing {
+  readonly place: number | null;
+  readonly direction: Direction;
+}
+
+function boundaryRow(question: Question, kind: StageName, crossing: Crossing): Boundary {
+  const { line, coneIndex } = question;
+  const { place: value } = crossing;
+  const drawn = (off: number) => drawnPlaces(question, kind, coneIndex + off, crossing);
+  const there = drawn(0);
+  const [cooler, hotter] = [drawn(-HALF_CONE), drawn(HALF_CONE)];
+  const moves = there.map((place, draw) => movePerCone(cooler[draw]!, place, hotter[draw]!));
+  const [below, above] = sides(question, kind, crossing);
+  return {
+    cone: coneText(coneIndex),
+    coneIndex,
+    kind,
+    along: line.along,
+    at: line.at,
+    value,
+    ...placePosterior(there),
+    lookedAt: line.range,
+    tilesNear: value === null ? 0 : tilesNear(question, line.unityAt(value)),
+    perCone: value === null ? null : meanMove(question, kind, crossing),
+    perConeInterval90: placePosterior(moves).interval90,
+    below,
+    above,
+  };
+}
+
+/** Mean log-odds of a stage along the line: its sign is the side of 1/2 the mean probability is on. */
+function meanLogOdds({ model, line }: Question, kind: StageName, coneIndex: number) {
+  return (place: number) => stageLogOdds(model[kind], line.unityAt(place), coneIndex).mean;
+}
+
+function meanCrossings(question: Question, kind: StageName, coneIndex: number) {
+  const nodes = evenNodes(question.line.range, CELLS);
+  const logOdds = meanLogOdds(question, kind, coneIndex);
+  const melted = meanLogOdds(question, 'melt', coneIndex);
+  return gridZeros(nodes.map(logOdds), nodes)
+    .map(({ cell, direction }) => {
+      const [low, high] = [nodes[cell]!, nodes[cell + 1]!];
+      return { place: findRoot(logOdds, low, high, (high - low) * 1e-9), direction };
+    })
+    .filter(({ place }) => kind === 'melt' || melted(place) >= 0);
+}
+
+function overallTrend(question: Question, kind: StageName): Crossing {
+  const [low, high] = question.line.range.map(meanLogOdds(question, kind, question.coneIndex));
+  return { place: null, direction: high! > low! ? 'rising' : 'falling' };
+}
+
+/** The place in each draw of the posterior: of its crossings in the same direction, the nearest. */
+function drawnPlaces(
+  { draws, line }: Question,
+  kind: StageName,
+  coneIndex: number,
+  crossing: Crossing,
+): Place[] {
+  const nodes = evenNodes(line.range, CELLS);
+  const rowsOf = (stage: StageName) =>
+    nodes.map((place) =>
+      columnValues(scaledInputs(line.unityAt(place), coneIndex), draws[stage].columns),
+    );
+  const own = lineRows(rowsOf(kind));
+  const melt = rowsOf('melt').map((row) => lineRows([row]));
+  return Array.from({ length: draws[kind].count }, (_, draw) => {
+    const logOdds = logOddsAlong(draws[kind], draw, own);
+    const zeros = gridZeros(logOdds, nodes).filter(
+      ({ direction }) => direction === crossing.direction,
+    );
+    const isMelted = ({ cell }: GridZero) =>
+      kind === 'melt' || logOddsAlong(draws.melt, draw, melt[cell]!)[0]! >= 0;
+    const shown = zeros.filter(isMelted).map(({ place }) => place);
+    if (shown.length > 0) return nearestPlace(shown, crossing.place ?? shown[0]!);
+    // It crosses, but only where the glaze is not melted.
+    if (zeros.length > 0) return 'none';
+    const from = crossing.place === null ? 0 : nearestNode(nodes, crossing.place);
+    const isAbove = logOdds[from]! >= 0 === (crossing.direction === 'rising');
+    return isAbove ? 'below' : 'beyond';
+  });
+}
+
+/** Place half a cone hotter less half a cone cooler; twice the half where one of them is missing. */
+function movePerCone(cooler: Place, there: Place, hotter: Place): Place {
+  const known = (place: Place) => typeof place === 'number';
+  if (known(hotter) && known(cooler)) return hotter - cooler;
+  if (known(hotter) && known(there)) return (hotter - there) / HALF_CONE;
+  return known(there) && known(cooler) ? (there - cooler) / HALF_CONE : 'none';
+}
+
+function meanMove(question: Question, kind: StageName, crossing: Crossing): number | null {
+  const near = (off: number): Place => {
+    const places = meanCrossings(question, kind, question.coneIndex + off)
+      .filter(({ direction }) => direction === crossing.direction)
+      .map(({ place }) => place);
+    return places.length === 0 ? 'none' : nearestPlace(places, crossing.place!);
+  };
+  const move = movePerCone(near(-HALF_CONE), crossing.place!, near(HALF_CONE));
+  return typeof move === 'number' ? move : null;
+}
+
+const SIDE_NAMES = { melt: ['underfired', 'melted'], gloss: ['matte', 'gloss'] } as const;
+
+/** What lies below and above the place; without one, what the middle of the line is. */
+function sides(question: Question, kind: StageName, crossing: Crossing): [string, string] {
+  const [no, yes] = SIDE_NAMES[kind];
+  if (crossing.place === null) {
+    const [low, high] = question.line.range;
+    const all = meanLogOdds(question, kind, question.coneIndex)((low + high) / 2) >= 0 ? yes : no;
+    return [all, all];
+  }
+  return crossing.direction === 'rising' ? [no, yes] : [yes, no];
+}
+
+function tilesNear({ experience, coneIndex }: Question, unity: Unity): number {
+  const squares = squaredSteps(experience, unity);
+  return experience.tiles.filter(
+    ({ heat }, i) =>
+      squares[i]! <= EDGE_STEPS ** 2 && Math.abs(heat!.coneIndex - coneIndex) <= NEAR_CONES,
+  ).length;
+}
+
+function nearestNode(nodes: readonly number[], place: number): number {
+  const cell = (place - nodes[0]!) / (nodes[1]! - nodes[0]!);
+  return Math.min(nodes.length - 1, Math.max(0, Math.round(cell)));
+}

@@ -1,0 +1,170 @@
+import { hazardNotes } from '../chemistry/hazards.ts';
+import { coneText } from '../firing/cone.ts';
+import { stageLogOdds, surfaceProbability } from '../model/log-odds.ts';
+import { SURFACES, type Model, type Surface, type SurfaceProbability } from '../model/model.ts';
+import { isJudged } from '../model/stages.ts';
+import {
+  probabilityQuantile,
+  productQuantile,
+  type GaussianLogOdds,
+} from '../numeric/logistic-normal.ts';
+import type {
+  ConeAnswer,
+  Interval90,
+  ModelStamp,
+  Point,
+  Predictions,
+  SurfaceInterval90,
+} from './answers.ts';
+import {
+  EDGE_STEPS,
+  experienceOf,
+  squaredSteps,
+  surroundings,
+  type Experience,
+  type Surroundings,
+} from './experience.ts';
+
+/**
+ * Surface probabilities of each point at each cone.
+ *
+ * For a load that truly reaches the cone: a load's own error is not in it. Each answer depends on
+ * its own point and cone only.
+ *
+ * @param model - fitted model
+ * @param points - compositions
+ * @param coneIndexes - cones as numbers
+ * @returns answers in the order of the points, then of the cones
+ */
+export function predict(
+  model: Model,
+  points: readonly Point[],
+  coneIndexes: readonly number[],
+): Predictions {
+  const experience = judgedExperience(model);
+  return {
+    schema: 'coneshift.predictions/1',
+    model: modelStamp(model),
+    predictions: points.flatMap((point) =>
+      coneAnswers(model, experience, point, coneIndexes).map((answer) => ({
+        point: point.point,
+        ...answer,
+      })),
+    ),
+  };
+}
+
+/**
+ * The judged tiles of a model, ready to be compared with points.
+ *
+ * @param model - fitted model
+ * @returns its experience
+ */
+export function judgedExperience(model: Model): Experience {
+  return experienceOf(model.archive.tiles.filter(isJudged));
+}
+
+/**
+ * What every answer says of the model it comes from.
+ *
+ * @param model - fitted model
+ * @returns tiles fitted and the archive's fingerprint
+ */
+export function modelStamp({ archive }: Model): ModelStamp {
+  return { tiles: archive.counts.fitted, archive: archive.fingerprint };
+}
+
+/**
+ * Answers for one point.
+ *
+ * @param model - fitted model
+ * @param experience - its judged tiles
+ * @param point - composition
+ * @param coneIndexes - cones as numbers
+ * @returns one answer a cone
+ */
+export function coneAnswers(
+  model: Model,
+  experience: Experience,
+  { unity }: Point,
+  coneIndexes: readonly number[],
+): ConeAnswer[] {
+  const squares = squaredSteps(experience, unity);
+  const hazards = hazardNotes(unity);
+  return coneIndexes.map((coneIndex) => {
+    const melt = stageLogOdds(model.melt, unity, coneIndex);
+    const gloss = stageLogOdds(model.gloss, unity, coneIndex);
+    const probability = surfaceProbability(melt, gloss);
+    const around = surroundings(experience, squares, coneIndex);
+    return {
+      cone: coneText(coneIndex),
+      coneIndex,
+      surface: mostProbable(probability),
+      probability,
+      interval90: surfaceIntervals(melt, gloss),
+      support: around.support,
+      nearest: around.nearest,
+      notes: [...supportNotes(around), ...heatNotes(experience, squares, coneIndex), ...hazards],
+    };
+  });
+}
+
+/**
+ * The most probable surface.
+ *
+ * @param probability - of each surface
+ * @returns the surface; of equal ones the less melted
+ * @example
+ * mostProbable({ underfired: 0.2, matte: 0.3, gloss: 0.5 }); // 'gloss'
+ */
+export function mostProbable(probability: SurfaceProbability): Surface {
+  return SURFACES.reduce((best, next) => (probability[next] > probability[best] ? next : best));
+}
+
+/**
+ * 90 % interval of the probability of each surface under the posterior.
+ *
+ * For matte and gloss it is the quantile of the product of the two stages.
+ *
+ * @param melt - log-odds of melted
+ * @param gloss - log-odds of gloss given melted
+ * @returns 5 and 95 % quantiles
+ * @example
+ * surfaceIntervals({ mean: 0, sd: 1 }, { mean: 40, sd: 0 }).underfired[1]; // ~0.8382
+ */
+export function surfaceIntervals(melt: GaussianLogOdds, gloss: GaussianLogOdds): SurfaceInterval90 {
+  const turned = ({ mean, sd }: GaussianLogOdds) => ({ mean: -mean, sd });
+  const both = (quantile: (p: number) => number): Interval90 => [quantile(0.05), quantile(0.95)];
+  return {
+    underfired: both((p) => probabilityQuantile(turned(melt), p)),
+    matte: both((p) => productQuantile(melt, turned(gloss), p)),
+    gloss: both((p) => productQuantile(melt, gloss, p)),
+  };
+}
+
+function supportNotes({ support, tilesWithinEdge }: Surroundings): string[] {
+  if (support === 'inside') return [];
+  const tiles = tilesWithinEdge === 1 ? '1 judged tile' : `${tilesWithinEdge} judged tiles`;
+  const within = `${tiles} within ${EDGE_STEPS} steps`;
+  return support === 'edge'
+    ? [`at the edge of the archive (${within}, too few of them close): fire a tile first`]
+    : [`outside the archive (${within}): carried over from tiles farther off`];
+}
+
+/** Heat beyond the tiles of glazes like this one: what is not modelled there. */
+function heatNotes({ tiles }: Experience, squares: Float64Array, coneIndex: number): string[] {
+  if (tiles.length === 0) return ['no judged tile at all: this is what is usual elsewhere'];
+  const near = tiles.filter((_, i) => squares[i]! <= EDGE_STEPS ** 2);
+  const like = near.length > 0 ? 'tile of such a glaze' : 'tile';
+  const heats = (near.length > 0 ? near : tiles).map(({ heat }) => heat!.coneIndex);
+  const hottest = heats.reduce((a, b) => Math.max(a, b));
+  const coolest = heats.reduce((a, b) => Math.min(a, b));
+  if (coneIndex > hottest) {
+    return [
+      `hotter than the hottest judged ${like} (cone ${coneText(hottest)}): running and blistering ` +
+        'are not modelled; fire on a catcher',
+    ];
+  }
+  if (coneIndex >= coolest) return [];
+  return [`cooler than the coolest judged ${like} (cone ${coneText(coolest)})`];
+}
