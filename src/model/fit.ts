@@ -1,7 +1,7 @@
 import type { Archive } from '../archive/archive.ts';
 import { coneText } from '../firing/cone.ts';
 import type { Model, Validation } from './model.ts';
-import { fitStages, isJudged, stageOf, type JudgedTile } from './stages.ts';
+import { fitStages, isJudged, stageOf, type JudgedTile, type StageFits } from './stages.ts';
 import { validation } from './validation.ts';
 
 export interface FitOptions {
@@ -24,19 +24,44 @@ const MAIN_CONES = [5, 6, 7];
  * @param options - version to note
  * @returns the model, with how it holds on tiles that were left out
  */
-export function fitModel(archive: Archive, { madeBy = 'coneshift' }: FitOptions = {}): Model {
+export function fitModel(archive: Archive, options: FitOptions = {}): Model {
   const tiles = archive.tiles.filter(isJudged);
   const fits = fitStages(tiles);
-  const named = new Set(tiles.flatMap(({ firing, load }) => (firing === undefined ? [] : [load])));
   const account = validation(tiles, fits);
+  return {
+    ...modelOf(archive, fits, options),
+    validation: account,
+    notes: fitNotes(tiles, account),
+  };
+}
+
+/** A model of which is not known how it holds on tiles left out. */
+export type UnvalidatedModel = Omit<Model, 'validation' | 'notes'>;
+
+/**
+ * The model alone, without its validation: for many fits in a row.
+ *
+ * @param archive - archive as read
+ * @param options - version to note
+ * @returns the same weights as `fitModel`
+ */
+export function fitUnvalidated(archive: Archive, options: FitOptions = {}): UnvalidatedModel {
+  return modelOf(archive, fitStages(archive.tiles.filter(isJudged)), options);
+}
+
+function modelOf(
+  archive: Archive,
+  fits: StageFits,
+  { madeBy = 'coneshift' }: FitOptions,
+): UnvalidatedModel {
+  const loads = archive.tiles.flatMap(({ firing, load }) => (firing === undefined ? [] : [load]));
+  const named = new Set(loads);
   return {
     schema: 'coneshift.model/1',
     madeBy,
     archive,
     melt: stageOf('melt', fits.melt, named),
     gloss: stageOf('gloss', fits.gloss, named),
-    validation: account,
-    notes: fitNotes(tiles, account),
   };
 }
 

@@ -1,8 +1,8 @@
+import type { UnvalidatedModel } from '../model/fit.ts';
 import type { Unity } from '../chemistry/unity.ts';
 import { coneText } from '../firing/cone.ts';
 import { columnValues, scaledInputs } from '../model/inputs.ts';
 import { stageLogOdds } from '../model/log-odds.ts';
-import type { Model } from '../model/model.ts';
 import { isJudged, type StageName } from '../model/stages.ts';
 import { findRoot } from '../numeric/roots.ts';
 import type { Boundaries, Boundary, Point } from './answers.ts';
@@ -48,7 +48,7 @@ type Draws = Readonly<Record<StageName, StageDraws>>;
  * @returns all crossings; one row without a value for a line that does not meet a boundary
  */
 export function boundaries(
-  model: Model,
+  model: UnvalidatedModel,
   coneIndexes: readonly number[],
   { through }: BoundariesOptions = {},
 ): Boundaries {
@@ -70,7 +70,7 @@ export function boundaries(
 }
 
 interface Question {
-  readonly model: Model;
+  readonly model: UnvalidatedModel;
   readonly draws: Draws;
   readonly experience: Experience;
   readonly line: CompositionLine;

@@ -1,7 +1,8 @@
+import type { UnvalidatedModel } from '../model/fit.ts';
 import { hazardNotes } from '../chemistry/hazards.ts';
 import { coneText } from '../firing/cone.ts';
 import { stageLogOdds, surfaceProbability } from '../model/log-odds.ts';
-import { SURFACES, type Model, type Surface, type SurfaceProbability } from '../model/model.ts';
+import { SURFACES, type Surface, type SurfaceProbability } from '../model/model.ts';
 import { isJudged } from '../model/stages.ts';
 import {
   probabilityQuantile,
@@ -37,7 +38,7 @@ import {
  * @returns answers in the order of the points, then of the cones
  */
 export function predict(
-  model: Model,
+  model: UnvalidatedModel,
   points: readonly Point[],
   coneIndexes: readonly number[],
 ): Predictions {
@@ -60,7 +61,7 @@ export function predict(
  * @param model - fitted model
  * @returns its experience
  */
-export function judgedExperience(model: Model): Experience {
+export function judgedExperience(model: UnvalidatedModel): Experience {
   return experienceOf(model.archive.tiles.filter(isJudged));
 }
 
@@ -70,7 +71,7 @@ export function judgedExperience(model: Model): Experience {
  * @param model - fitted model
  * @returns tiles fitted and the archive's fingerprint
  */
-export function modelStamp({ archive }: Model): ModelStamp {
+export function modelStamp({ archive }: UnvalidatedModel): ModelStamp {
   return { tiles: archive.counts.fitted, archive: archive.fingerprint };
 }
 
@@ -84,7 +85,7 @@ export function modelStamp({ archive }: Model): ModelStamp {
  * @returns one answer a cone
  */
 export function coneAnswers(
-  model: Model,
+  model: UnvalidatedModel,
   experience: Experience,
   { unity }: Point,
   coneIndexes: readonly number[],

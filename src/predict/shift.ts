@@ -1,5 +1,5 @@
+import type { UnvalidatedModel } from '../model/fit.ts';
 import { isJudged } from '../model/stages.ts';
-import type { Model } from '../model/model.ts';
 import type { NearTile, Point, PointShift, Shift } from './answers.ts';
 import {
   EDGE_STEPS,
@@ -28,7 +28,7 @@ const CONES_BEYOND = 1;
  * @returns one answer a point, its cones from cool to hot
  */
 export function shift(
-  model: Model,
+  model: UnvalidatedModel,
   points: readonly Point[],
   coneIndexes: readonly number[],
 ): Shift {

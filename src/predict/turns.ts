@@ -1,8 +1,9 @@
+import type { UnvalidatedModel } from '../model/fit.ts';
 import type { Unity } from '../chemistry/unity.ts';
 import { coneText } from '../firing/cone.ts';
 import { columnValues, scaledInputs } from '../model/inputs.ts';
 import { stageLogOdds, surfaceProbability } from '../model/log-odds.ts';
-import type { Model, Surface } from '../model/model.ts';
+import type { Surface } from '../model/model.ts';
 import { log1pExp } from '../numeric/logistic.ts';
 import { findRoot } from '../numeric/roots.ts';
 import type { Turn } from './answers.ts';
@@ -37,7 +38,7 @@ interface Change {
  * @returns the turns, from cool to hot
  */
 export function turns(
-  model: Model,
+  model: UnvalidatedModel,
   draws: { readonly melt: StageDraws; readonly gloss: StageDraws },
   unity: Unity,
   range: readonly [number, number],
@@ -55,7 +56,7 @@ export function turns(
   }));
 }
 
-function meanChanges(model: Model, unity: Unity, nodes: readonly number[]): Change[] {
+function meanChanges(model: UnvalidatedModel, unity: Unity, nodes: readonly number[]): Change[] {
   const probability = (cone: number) =>
     surfaceProbability(
       stageLogOdds(model.melt, unity, cone),
