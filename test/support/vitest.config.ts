@@ -7,6 +7,9 @@ export default defineConfig({
     include: ['test/**/*.test.ts'],
     testTimeout: 120_000,
     hookTimeout: 120_000,
+    reporters: process.env['CI']
+      ? [['default', { summary: false }], ['json', { outputFile: '.test-results/vitest.json' }]]
+      : ['default'],
     coverage: { include: ['src/**/*.ts'], exclude: ['**/*.d.ts'] },
   },
 });
