@@ -24,4 +24,12 @@ export default [
       '@typescript-eslint/no-non-null-assertion': 'off',
     },
   },
+  {
+    // These folders have no tsconfig.json of their own; the tests' one covers them.
+    basePath,
+    files: ['datasets/**/*.ts', 'notebooks/**/*.ts'],
+    languageOptions: {
+      parserOptions: { projectService: false, project: `${basePath}test/tsconfig.json` },
+    },
+  },
 ];

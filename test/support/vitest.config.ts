@@ -8,7 +8,10 @@ export default defineConfig({
     testTimeout: 120_000,
     hookTimeout: 120_000,
     reporters: process.env['CI']
-      ? [['default', { summary: false }], ['json', { outputFile: '.test-results/vitest.json' }]]
+      ? [
+          ['default', { summary: false }],
+          ['json', { outputFile: '.test-results/vitest.json' }],
+        ]
       : ['default'],
     coverage: { include: ['src/**/*.ts'], exclude: ['**/*.d.ts'] },
   },
