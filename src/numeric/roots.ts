@@ -69,7 +69,7 @@ function interpolatedStep(
   fc: number,
 ): number {
   const s = fb / fa;
-  if (a === c) return ((c - b) * s) / (1 - s);
+  if (a === c) return ((b - c) * s) / (1 - s);
   const q = fa / fc;
   const r = fb / fc;
   const numerator = s * ((c - b) * q * (q - r) - (b - a) * (r - 1));

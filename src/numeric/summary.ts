@@ -29,15 +29,15 @@ export function median(values: readonly number[]): number {
 /**
  * Value below which a share p of the values lies.
  *
- * Takes the value of rank ceil(n p) of the sorted list, the mean of two neighbours where n p is whole
- * (definition 2 of Hyndman & Fan, The American Statistician 50 (1996) 361-365).
+ * Interpolates linearly between the values of rank 1 + (n - 1) p (definition 7 of Hyndman & Fan, The
+ * American Statistician 50 (1996) 361-365).
  *
  * @param values - at least one, in any order
  * @param p - 0 to 1
  * @returns the quantile
  * @throws {RangeError} if there is no value
  * @example
- * quantile([1, 2, 3, 4, 5], 0.9); // 5
+ * quantile([1, 2, 3, 4, 5], 0.875); // 4.5
  */
 export function quantile(values: readonly number[], p: number): number {
   return statistics.quantile(some(values), p);
