@@ -6,6 +6,8 @@ export {
   faultLine,
   ModelFileError,
   StudioError,
+  UnsolvableError,
+  UsageError,
   type Fault,
 } from './errors.ts';
 
@@ -28,6 +30,8 @@ export { recipeUnity } from './chemistry/recipe.ts';
 export { GENERAL_CAUTIONS, hazardNotes } from './chemistry/hazards.ts';
 
 export type * from './archive/archive.ts';
+export { ARCHIVE_FILES } from './archive/archive-files.ts';
+export { inventory, type Inventory } from './archive/inventory.ts';
 export { parseArchive, readArchive, type ParseOptions } from './archive/read-archive.ts';
 export { readPoints } from './archive/read-points.ts';
 
@@ -40,3 +44,16 @@ export { predict } from './predict/predict.ts';
 export { shift } from './predict/shift.ts';
 export { boundaries, type BoundariesOptions } from './predict/boundaries.ts';
 export { glazePoint, recipePoint } from './predict/point.ts';
+
+export { toJson } from './render/json.ts';
+export { PLAIN_LOOK, type Look } from './render/page.ts';
+export { printable, textWidth } from './render/printable.ts';
+export { wrapped, type Margins } from './render/wrapped.ts';
+export { compositionWords, silicaToAlumina } from './render/composition-words.ts';
+export { checkPage } from './render/check-page.ts';
+export { fitPage, type FitOutcome } from './render/fit-page.ts';
+export { predictionPage } from './render/prediction-page.ts';
+export { shiftPage } from './render/shift-page.ts';
+export { boundaryPage } from './render/boundary-page.ts';
+export { unityPage, type RecipeUnity } from './render/unity-page.ts';
+export { checkAnswer, fitAnswer, unityAnswer } from './render/answers-json.ts';

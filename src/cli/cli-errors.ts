@@ -1,0 +1,11 @@
+import { StudioError } from '../errors.ts';
+
+/** A file or folder that cannot be read. */
+export class UnreadableError extends StudioError {
+  readonly exitCode = 3;
+}
+
+/** A file that cannot be written, or must not be. */
+export class UnwritableError extends StudioError {
+  readonly exitCode = 2;
+}

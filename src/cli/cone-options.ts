@@ -1,0 +1,15 @@
+/** Cones that a studio asks about most. */
+export const USUAL_CONES: readonly string[] = ['5', '6', '7'];
+
+/**
+ * Cones as the command line takes them: apart by spaces or commas.
+ *
+ * @param words - values of `--cone`
+ * @returns cone indexes in the order asked, each once
+ * @throws {ConeError} at the first that is no cone
+ */
+export async function conesOf(words: readonly string[]): Promise<number[]> {
+  const { coneIndex } = await import('../index.ts');
+  const cones = words.flatMap((word) => word.split(',')).filter((cone) => cone.trim() !== '');
+  return [...new Set(cones.map((cone) => coneIndex(cone)))];
+}

@@ -1,0 +1,131 @@
+import { describe, expect, it } from 'vitest';
+import { ModelFileError } from '../../src/errors.ts';
+import { fitModel } from '../../src/model/fit.ts';
+import { modelText, parseModel } from '../../src/model/model-file.ts';
+import type { Model } from '../../src/model/model.ts';
+import { anArchive, aTile } from '../support/builders.ts';
+import { inventedTiles } from '../support/invented-tiles.ts';
+
+const tiles = [
+  ...inventedTiles({ tiles: 40, seed: 4 }),
+  aTile({
+    tile: 'odd',
+    verdict: 'unjudged',
+    other: JSON.parse('{"__proto__":"kept","":"x"}') as Record<string, string>,
+  }),
+];
+const model = fitModel(anArchive(tiles));
+const text = modelText(model);
+
+/** The model's text with one change to its data. */
+function changed(change: (data: Record<string, never>) => void): string {
+  const data = JSON.parse(text) as Record<string, never>;
+  change(data);
+  return JSON.stringify(data);
+}
+type Data = Record<string, Record<string, unknown[]>>;
+
+it('comes back from its text whole, and then byte for byte', () => {
+  const again = modelText(parseModel(text));
+  expect(JSON.parse(again)).toEqual(JSON.parse(text));
+  expect(modelText(parseModel(again))).toBe(again);
+});
+
+it('gives the same text for the same archive in any order of rows', () => {
+  const turned = fitModel(anArchive([...tiles].reverse()));
+  expect(modelText({ ...turned, archive: model.archive })).toBe(text);
+});
+
+it('keeps columns with the names of object internals as data', () => {
+  const other = parseModel(text).archive.tiles.find(({ tile }) => tile === 'odd')!.other!;
+  expect(Object.getOwnPropertyNames(other)).toEqual(['__proto__', '']);
+  expect(({} as Record<string, unknown>)['kept']).toBeUndefined();
+});
+
+it('is refused by the writer if a number is not finite', () => {
+  const broken: Model = { ...model, melt: { ...model.melt, loadSd: Number.NaN } };
+  expect(() => modelText(broken)).toThrow('finite numbers only, loadSd is NaN');
+});
+
+describe('a file that is no model', () => {
+  it.each([
+    ['nothing', '', 'no JSON or was cut off'],
+    ['a cut file', text.slice(0, text.length / 2), 'no JSON or was cut off'],
+    ['a list', '[]', 'found schema none'],
+    ['null', 'null', 'found schema none'],
+    [
+      'other JSON',
+      '{"schema":"coneshift.predictions/1"}',
+      'found schema "coneshift.predictions/1"',
+    ],
+    ['a later version', text.replace('model/1', 'model/2'), 'found schema "coneshift.model/2"'],
+    ['a bare schema', '{"schema":"coneshift.model/1"}', 'the model file is damaged'],
+    ['deep nesting', `${'['.repeat(5000)}${']'.repeat(5000)}`, 'found schema none'],
+  ])('is told from one: %s', (_, given, message) => {
+    expect(() => parseModel(given)).toThrow(ModelFileError);
+    expect(() => parseModel(given)).toThrow(message);
+  });
+});
+
+describe('a damaged model', () => {
+  const damages: readonly (readonly [string, string, string])[] = [
+    ['an unknown key', changed((d) => Object.assign(d, { run: 'x' })), 'Unrecognized key: "run"'],
+    ['a number turned null', text.replace('"loadSd":', '"loadSd":null,"x":'), 'melt.loadSd'],
+    ['a fingerprint', text.replace('sha256:', 'sha1:'), 'archive.fingerprint: expected sha256'],
+    [
+      'an unknown oxide',
+      changed((d) =>
+        Object.assign((d as Data)['archive']['tiles'][0] as object, { unity: { XO: 1 } }),
+      ),
+      'archive.tiles.0.unity',
+    ],
+    [
+      'an impossible cone',
+      changed((d) => {
+        const tile = (d as Data)['archive']['tiles'][0] as { heat: { cone: string } };
+        tile.heat.cone = '99';
+      }),
+      'archive.tiles.0.heat.cone: expected a cone',
+    ],
+    ['a column', text.replace('"SiO2^2"', '"SiO2^3"'), 'melt.columns: expected 1 SiO2'],
+    [
+      'a weight too few',
+      changed((d) => (d as Data)['gloss']['mean'].pop()),
+      'expected 20 numbers, got 19',
+    ],
+    [
+      'a covariance cell too few',
+      changed((d) => (d as Data)['melt']['covarianceLower'].pop()),
+      'expected 276 numbers, got 275',
+    ],
+    [
+      'a covariance that is none',
+      changed((d) => {
+        (d as Data)['melt']['covarianceLower'][2] = -1;
+      }),
+      'not positive definite',
+    ],
+    ['a tile too few', changed((d) => (d as Data)['archive']['tiles'].pop()), 'counts that add up'],
+  ];
+
+  it.each(damages)('is refused: %s', (_, given, message) => {
+    expect(() => parseModel(given)).toThrow(ModelFileError);
+    expect(() => parseModel(given)).toThrow(message);
+  });
+
+  it('ends with exit code 3, says what to do, and stays short', () => {
+    const broken = changed((d) => {
+      for (const tile of (d as Data)['archive']['tiles'] as { line: unknown }[]) tile.line = 'x';
+    });
+    try {
+      parseModel(broken);
+      expect.unreachable();
+    } catch (error) {
+      expect(error).toMatchObject({
+        exitCode: 3,
+        hint: expect.stringContaining('coneshift fit') as string,
+      });
+      expect((error as Error).message.split('\n')).toHaveLength(10);
+    }
+  });
+});
