@@ -30,7 +30,7 @@ const joined = (page: string) => page.replace(/\s+/g, ' ');
 describe('the page of shift', () => {
   it('has a row a cone with probability, interval, surface and support', () => {
     expect(lineWith(shiftOf(aPointShift()), '80 %').trim()).toBe(
-      '5    5 % (1-12)    15 % (6-28)    80 % (64-90)  gloss      inside',
+      '5    5 % (1-12)   15 % (6-28)   80 % (64-90)  gloss      inside',
     );
   });
 
