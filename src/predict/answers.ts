@@ -97,8 +97,11 @@ export interface Boundary {
   readonly noCrossing: number;
   /** Range looked at. */
   readonly lookedAt: readonly [number, number];
-  /** Tiles judged near this boundary. */
+  /** Tiles judged near this boundary: within the edge radius in composition, half a cone in heat. */
   readonly tilesNear: number;
+  /** How far inside the archive the place lies at this cone; null without a place. */
+  readonly support: Support | null;
+  readonly nearest: readonly NearTile[];
   /** How far the place moves for one cone more heat, with its interval; null where unknown. */
   readonly perCone: number | null;
   readonly perConeInterval90: PlaceInterval90;

@@ -1,12 +1,18 @@
 import type { UnvalidatedModel } from '../model/fit.ts';
-import type { Unity } from '../chemistry/unity.ts';
+import { hazardNotes } from '../chemistry/hazards.ts';
 import { coneText } from '../firing/cone.ts';
 import { columnValues, scaledInputs } from '../model/inputs.ts';
 import { stageLogOdds } from '../model/log-odds.ts';
 import { isJudged, type StageName } from '../model/stages.ts';
 import { findRoot } from '../numeric/roots.ts';
 import type { Boundaries, Boundary, Point } from './answers.ts';
-import { EDGE_STEPS, experienceOf, squaredSteps, type Experience } from './experience.ts';
+import {
+  EDGE_STEPS,
+  experienceOf,
+  squaredSteps,
+  surroundings,
+  type Experience,
+} from './experience.ts';
 import { compositionLines, type CompositionLine } from './lines.ts';
 import { middleComposition } from './middle.ts';
 import {
@@ -65,7 +71,7 @@ export function boundaries(
     boundaries: coneIndexes.flatMap((coneIndex) =>
       lines.flatMap((line) => lineBoundaries({ model, draws, experience, line, coneIndex })),
     ),
-    notes: [],
+    notes: hazardNotes(middle.unity),
   };
 }
 
@@ -109,7 +115,7 @@ function boundaryRow(question: Question, kind: StageName, crossing: Crossing): B
     value,
     ...placePosterior(there),
     lookedAt: line.range,
-    tilesNear: value === null ? 0 : tilesNear(question, line.unityAt(value)),
+    ...placeSupport(question, value),
     perCone: value === null ? null : meanMove(question, kind, crossing),
     perConeInterval90: placePosterior(moves).interval90,
     below,
@@ -202,12 +208,15 @@ function sides(question: Question, kind: StageName, crossing: Crossing): [string
   return crossing.direction === 'rising' ? [no, yes] : [yes, no];
 }
 
-function tilesNear({ experience, coneIndex }: Question, unity: Unity): number {
-  const squares = squaredSteps(experience, unity);
-  return experience.tiles.filter(
-    ({ heat }, i) =>
-      squares[i]! <= EDGE_STEPS ** 2 && Math.abs(heat!.coneIndex - coneIndex) <= NEAR_CONES,
-  ).length;
+/** The tiles about a place, and how far inside the archive it lies. */
+function placeSupport({ experience, coneIndex, line }: Question, value: number | null) {
+  if (value === null) return { tilesNear: 0, support: null, nearest: [] };
+  const squares = squaredSteps(experience, line.unityAt(value));
+  const isNear = (heat: number, i: number) =>
+    squares[i]! <= EDGE_STEPS ** 2 && Math.abs(heat - coneIndex) <= NEAR_CONES;
+  const tilesNear = experience.tiles.filter(({ heat }, i) => isNear(heat!.coneIndex, i)).length;
+  const { support, nearest } = surroundings(experience, squares, coneIndex);
+  return { tilesNear, support, nearest };
 }
 
 function nearestNode(nodes: readonly number[], place: number): number {
