@@ -17,9 +17,9 @@ export async function archiveFilesAt(path: string, io: Io): Promise<Map<string, 
   if (path === STDIN) return new Map([['standard input', await io.readBytes(path)]]);
   const kind = await io.kindOf(path);
   if (kind === 'absent' || kind === 'other') {
-    const found = kind === 'absent' ? 'nothing there' : 'something else there';
+    const found = kind === 'absent' ? 'nothing' : 'something else';
     throw new UnreadableError(
-      `expected an archive (a folder or a CSV file) at "${path}", ${found}`,
+      `expected an archive (a folder or a CSV file) at "${path}", found ${found}`,
     );
   }
   if (kind === 'file') return new Map([[basename(path), await io.readBytes(path)]]);

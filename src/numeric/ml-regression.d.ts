@@ -3,6 +3,5 @@ declare module 'ml-regression' {
   export class TheilSenRegression {
     constructor(x: number[], y: number[]);
     readonly slope: number;
-    readonly intercept: number;
   }
 }

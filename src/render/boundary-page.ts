@@ -3,6 +3,7 @@ import { alignedLines, type Align } from './aligned.ts';
 import { cautionSection } from './answer-sections.ts';
 import { compositionWords } from './composition-words.ts';
 import { AXIS_WORDS, digitsAlong, moveSection } from './boundary-moves.ts';
+import { nearTileWords } from './cone-table.ts';
 import { fixed, percentDigits, placeRange } from './figures.ts';
 import { INDENT, pageOf, point, type Look, type Section } from './page.ts';
 import { printable } from './printable.ts';
@@ -27,6 +28,7 @@ export function boundaryPage(answer: Boundaries, look: Look): string {
       { lines: [wrapped(printable(introduction(answer)), look)] },
       ...cones.map((cone) => coneSection(boundaries.filter((boundary) => boundary.cone === cone))),
       moveSection(boundaries),
+      { heading: 'Nearest tiles', lines: nearestLines(boundaries, look) },
       { heading: 'How to read it', lines: readingLines(model.tiles, look) },
       { heading: 'Notes', lines: notes.map((note) => point(note, look)) },
       cautionSection(look),
@@ -44,15 +46,16 @@ function readingLines(tiles: number, look: Look): string[] {
     `From ${countOf(tiles, 'judged tile')}. Melt: underfired and melted are as likely as each other. ` +
       'Gloss: of the melted, matte and gloss are.',
     'Near: judged tiles within 3 steps of the place (a step is a change of one oxide worth a new ' +
-      'tile) and half a cone of the heat.',
+      'tile) and half a cone of the heat. Archive: whether the place lies inside, at the edge or ' +
+      'outside what was fired.',
     'An interval that leaves the range looked at says so. "no place" counts the part of the posterior ' +
       'in which the line does not meet the boundary there.',
   ];
   return lines.map((line) => point(line, look));
 }
 
-const HEAD = ['', 'below', 'place', 'above', '90 % interval', 'near', 'no place'];
-const ALIGN: readonly Align[] = ['left', 'right', 'right', 'left', 'left', 'right', 'right'];
+const HEAD = ['', 'place', 'above it', '90 % interval', 'no place', 'near', 'archive'];
+const ALIGN: readonly Align[] = ['left', 'right', 'left', 'left', 'right', 'right', 'left'];
 
 function coneSection(boundaries: readonly Boundary[]): Section {
   const [head = '', ...rows] = alignedLines({
@@ -79,10 +82,25 @@ function heldWord(held: string): string {
 
 function boundaryCells(boundary: Boundary): string[] {
   const { kind, along, value, interval90, lookedAt, tilesNear, noCrossing } = boundary;
-  const { below, above } = boundary;
+  const { above, support } = boundary;
   const digits = digitsAlong(along);
   const range = placeRange(interval90, lookedAt, (place) => place.toFixed(digits));
   const missing = noCrossing < LEAST_SHARE ? '.' : `${percentDigits(noCrossing)} %`;
-  if (value === null) return [kind, below, 'all', '', range, '-', missing];
-  return [kind, below, fixed(value, digits), above, range, String(tilesNear), missing];
+  if (value === null) return [kind, 'none', `all ${above}`, range, missing];
+  const place = fixed(value, digits);
+  return [kind, place, above, range, missing, String(tilesNear), support ?? '-'];
+}
+
+/** Nearest tiles named for each place; the JSON has more. */
+const SHOWN_NEAREST = 2;
+
+function nearestLines(boundaries: readonly Boundary[], { columns }: Look): string[] {
+  return boundaries.flatMap(({ cone, kind, along, value, nearest }) => {
+    if (value === null) return [];
+    const place = `${AXIS_WORDS[along]} ${fixed(value, digitsAlong(along))}`;
+    const tiles = nearest.slice(0, SHOWN_NEAREST).map(nearTileWords);
+    const text = `${kind} at ${cone}, ${place}: ${tiles.join(', ') || 'none'}`;
+    const first = ' '.repeat(INDENT);
+    return [wrapped(text, { columns, first, next: first.repeat(2) })];
+  });
 }

@@ -23,6 +23,10 @@ const OTHERS = OXIDES.filter((oxide) => !GLASS.includes(oxide) && !isFlux(oxide)
  * @param recipes - recipes with their unity formulas
  * @param look - width and marking
  * @returns the page
+ * @example
+ * const recipes = [{ recipe: 'Clear', unity: { SiO2: 3.5, Al2O3: 0.5, K2O: 0.3, CaO: 0.7 } }];
+ * unityPage(recipes, PLAIN_LOOK).split('\n')[2];
+ * // '  Clear   3.500  0.500     .         7.0          0.30'
  */
 export function unityPage(recipes: readonly RecipeUnity[], look: Look): string {
   const fluxes = FLUXES.filter((oxide) => isHeld(recipes, oxide));

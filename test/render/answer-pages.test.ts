@@ -144,8 +144,9 @@ describe('the page of boundaries', () => {
     const page = boundariesOf(aBoundary());
     expect(page).toContain('along alumina, at silica 3.20');
     expect(lineWith(page, '0.66 to 0.78').trim()).toMatch(
-      /^melt +melted +0\.71 +underfired +0\.66 to 0\.78 +12 +\.$/,
+      /^melt +0\.71 +underfired +0\.66 to 0\.78 +\. +12 +inside$/,
     );
+    expect(page).toContain('melt at 6, alumina 0.71: A1 matte at 6 (0.9)');
     expect(lineWith(page, '+0.07 to +0.19').trim()).toMatch(
       /^alumina +melted to underfired +6 +\+0\.12 +\+0\.07 to \+0\.19$/,
     );
@@ -162,9 +163,10 @@ describe('the page of boundaries', () => {
 
   it('says which side the whole line lies on where it meets no boundary', () => {
     const page = boundariesOf(
-      aBoundary({ value: null, perCone: null, below: 'melted', above: 'melted', noCrossing: 0.66 }),
+      aBoundary({ value: null, support: null, perCone: null, above: 'melted', noCrossing: 0.66 }),
     );
-    expect(lineWith(page, 'all').trim()).toMatch(/^melt +melted +all /);
+    expect(lineWith(page, 'none').trim()).toMatch(/^melt +none +all melted +0\.66 to 0\.78 +66 %$/);
+    expect(page).not.toContain('Nearest tiles');
     expect(page).not.toContain('Moved by one cone');
   });
 

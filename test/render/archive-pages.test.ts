@@ -39,7 +39,7 @@ describe('the page of check', () => {
       '50 faults, listed at the end; mend them, then fit.',
     ]);
     expect(page.match(/^ {2}tiles\.csv:\d+ cone: expected a cone/gm)).toHaveLength(50);
-    expect(page.trimEnd().endsWith('got "x"')).toBe(true);
+    expect(joined(page).trimEnd().endsWith('got "x"')).toBe(true);
     expect(page).not.toContain('can be fitted');
   });
 

@@ -53,6 +53,8 @@ export function aBoundary(given: Partial<Boundary> = {}): Boundary {
     noCrossing: 0,
     lookedAt: [0.1, 0.9],
     tilesNear: 12,
+    support: 'inside',
+    nearest: [{ tile: 'A1', surface: 'matte', cone: '6', distance: 0.9 }],
     perCone: 0.12,
     perConeInterval90: [0.07, 0.19],
     below: 'melted',

@@ -29,7 +29,8 @@ export function fakeIo({
   const output = { out: '', err: '' };
   const written = new Map<string, string>();
   const opened: string[] = [];
-  const contents = (path: string) => (path === STDIN ? stdin : (written.get(path) ?? files[path]));
+  const contents = (path: string): string | Uint8Array | undefined =>
+    path === STDIN ? stdin : (written.get(path) ?? files[path]);
   const readBytes = (path: string) => {
     opened.push(path);
     const content = contents(path);

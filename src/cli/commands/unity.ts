@@ -6,7 +6,8 @@ import { recipesAt, soundRecipe } from '../recipe-input.ts';
 import { safeLines } from '../report-error.ts';
 
 const HELP = `
-Without a name, all recipes of the archive. Faults of its tiles do not matter here.
+Without a name, all recipes of the archive. Faults of its tiles do not matter
+here.
 
 Example:
   coneshift unity datasets/demo-studio Bellringer "Slate Hen"`;
