@@ -105,6 +105,12 @@ describe('theilSen', () => {
     expect(theilSen([0, 1, 1, 1], [0, 3, 1, 2]).slope).toBe(2);
   });
 
+  it('takes the mean of the middle two of an even number of slopes', () => {
+    // Slopes: 1 and 3; six slopes of which the middle two are 2 and 23.
+    expect(theilSen([0, 1, 1], [0, 3, 1]).slope).toBe(2);
+    expect(theilSen([0, 1, 2, 3], [1, 3, 5, 70]).slope).toBe(12.5);
+  });
+
   it('turns with its data: y scaled and moved, x mirrored', () => {
     const { normal } = seededGenerator(21);
     const x = Array.from({ length: 15 }, (_, i) => i + 0.3 * normal());

@@ -153,12 +153,13 @@ function surfaceOf(melt: number, gloss: number): Surface {
 }
 
 describe('a turn, against draws of another library', () => {
+  const surer = fitUnvalidated(anArchive(inventedTiles({ tiles: 400, seed: 45 })));
   const cones = Array.from({ length: 161 }, (_, i) => 4 + i / 40);
-  const [{ turns }] = shift(model, [{ point: 'P', unity: GLOSSY }], [5, 6, 7]).points;
+  const [{ turns }] = shift(surer, [{ point: 'P', unity: GLOSSY }], [5, 6, 7]).points;
   const [turn] = turns;
   const random = seededGenerator(77);
-  const melt = drawnPaths(model.melt, random, GLOSSY, cones, 3000);
-  const gloss = drawnPaths(model.gloss, random, GLOSSY, cones, 3000);
+  const melt = drawnPaths(surer.melt, random, GLOSSY, cones, 3000);
+  const gloss = drawnPaths(surer.gloss, random, GLOSSY, cones, 3000);
 
   const placeOf = ({ from, to, coneIndex }: Turn, draw: number): number | undefined => {
     const path = cones.map((_, i) => surfaceOf(melt[draw][i], gloss[draw][i]));
