@@ -33,8 +33,9 @@ const MOST_ROUNDS = 1000;
  * Re-estimates the prior sds of a stage from its tiles, and fits the stage with them.
  *
  * Each group's variance is moved to its fixed point (pseudo-observations and squared departures from
- * the prior means, over pseudo-observations and well-determined weights), which is a stationary point
- * of the Laplace evidence times a scaled inverse chi-squared prior. Without tiles the sds stay.
+ * the prior means, over pseudo-observations and well-determined weights). That is nearly a stationary
+ * point of the Laplace evidence times a scaled inverse chi-squared prior, per log variance; the shift of
+ * the mode with the sds is left out, as in the source. Without tiles the sds stay.
  *
  * @param data - rows in the order of `priorColumns`, outcomes, loads
  * @param prior - groups with their means and starting sds

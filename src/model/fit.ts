@@ -78,7 +78,8 @@ function fitNotes(tiles: readonly JudgedTile[], { byCone, notes }: Validation): 
     .filter(([, tilesOnSide]) => tilesOnSide < FEW_TILES)
     .map(
       ([side, tilesOnSide, boundary]) =>
-        `${tilesOnSide} tiles judged ${side} (fewer than ${FEW_TILES}): the ${boundary} boundary ` +
+        `${tilesOnSide} ${tilesOnSide === 1 ? 'tile' : 'tiles'} judged ${side} (fewer than ` +
+        `${FEW_TILES}): the ${boundary} boundary ` +
         'rests mostly on what is usual elsewhere; fire and judge more of that side',
     );
   const unseen = MAIN_CONES.filter(

@@ -1,12 +1,16 @@
+import type { Tile } from '../archive/archive.ts';
 import { ModelFileError } from '../errors.ts';
+import { coneIndex } from '../firing/cone.ts';
 import { choleskyFactor } from '../numeric/linalg.ts';
 import { MODEL_SCHEMA, modelShape } from './model-shape.ts';
 import type { Model } from './model.ts';
 import { priorColumns } from './priors.ts';
-import { STAGE_PRIOR, type StageName } from './stages.ts';
+import { isJudged, STAGE_PRIOR, type StageName } from './stages.ts';
 
 /** Faults named in a message; a damaged file may have thousands. */
 const SHOWN_FAULTS = 8;
+/** Cones are written in hundredths. */
+const ROUNDED_CONE = 0.0051;
 
 /**
  * A model as text: one line of JSON.
@@ -44,11 +48,7 @@ export function parseModel(text: string): Model {
   }
   const model = read.data as Model;
   const wrong = (['melt', 'gloss'] as const).flatMap((name) => stageFaults(name, model));
-  const { counts, tiles } = model.archive;
-  const kept = counts.fitted + counts.unjudged + counts.setAside;
-  if (kept !== tiles.length || counts.read !== kept + counts.refused) {
-    wrong.push('  archive.counts: expected counts that add up to the tiles held');
-  }
+  wrong.push(...archiveFaults(model.archive));
   if (wrong.length > 0) throw damaged(wrong);
   return model;
 }
@@ -79,6 +79,29 @@ function damaged(lines: readonly string[]): ModelFileError {
     `the model file is damaged\n${shown.join('\n')}`,
     'Make the model anew with: coneshift fit ARCHIVE --out model.json',
   );
+}
+
+/** What the fit and the answers rely on, beyond the shape of each record. */
+function archiveFaults({ counts, tiles }: Model['archive']): string[] {
+  const tally = (is: (tile: Tile) => boolean) => tiles.filter(is).length;
+  const unjudged = tally(({ verdict }) => verdict === 'unjudged');
+  const setAside = tally(({ verdict }) => verdict === 'overfired');
+  const isWhole =
+    counts.fitted === tally(isJudged) &&
+    counts.unjudged === unjudged &&
+    counts.setAside === setAside &&
+    counts.fitted + unjudged + setAside === tiles.length &&
+    counts.read === tiles.length + counts.refused;
+  const names = new Set(tiles.map(({ tile }) => tile));
+  return [
+    ...(isWhole ? [] : ['  archive.counts: expected counts that add up to the tiles held']),
+    ...(names.size === tiles.length ? [] : ['  archive.tiles: expected every name once']),
+    ...tiles.flatMap(({ heat }, i) =>
+      heat === undefined || Math.abs(coneIndex(heat.cone) - heat.coneIndex) <= ROUNDED_CONE
+        ? []
+        : [`  archive.tiles.${i}.heat: expected coneIndex of cone ${heat.cone}`],
+    ),
+  ];
 }
 
 /** The weights must belong to the columns this version computes, and the covariance be one. */

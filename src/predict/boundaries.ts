@@ -197,15 +197,19 @@ function meanMove(question: Question, kind: StageName, crossing: Crossing): numb
 
 const SIDE_NAMES = { melt: ['underfired', 'melted'], gloss: ['matte', 'gloss'] } as const;
 
-/** What lies below and above the place; without one, what the middle of the line is. */
+/** What lies below and above the place; without one, what all of the line is. */
 function sides(question: Question, kind: StageName, crossing: Crossing): [string, string] {
   const [no, yes] = SIDE_NAMES[kind];
-  if (crossing.place === null) {
-    const [low, high] = question.line.range;
-    const all = meanLogOdds(question, kind, question.coneIndex)((low + high) / 2) >= 0 ? yes : no;
-    return [all, all];
-  }
-  return crossing.direction === 'rising' ? [no, yes] : [yes, no];
+  if (crossing.place !== null) return crossing.direction === 'rising' ? [no, yes] : [yes, no];
+  const { line, coneIndex } = question;
+  const melted = meanLogOdds(question, 'melt', coneIndex);
+  const nodes = evenNodes(line.range, CELLS);
+  // Gloss or matte is asked only where the glaze melts.
+  const asked = kind === 'melt' ? nodes : nodes.filter((place) => melted(place) >= 0);
+  const middle = asked[Math.floor(asked.length / 2)];
+  if (middle === undefined) return ['underfired', 'underfired'];
+  const all = meanLogOdds(question, kind, coneIndex)(middle) >= 0 ? yes : no;
+  return [all, all];
 }
 
 /** The tiles about a place, and how far inside the archive it lies. */

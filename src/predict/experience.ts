@@ -59,7 +59,10 @@ export interface Experience {
  * @returns the tiles and their compositions in steps
  */
 export function experienceOf(tiles: readonly Tile[]): Experience {
-  const known = tiles.filter(({ heat }) => heat !== undefined);
+  // By name: equally near tiles then stand in one order for any order of rows.
+  const known = tiles
+    .filter(({ heat }) => heat !== undefined)
+    .sort((a, b) => (a.tile < b.tile ? -1 : 1));
   const steps = new Float64Array(known.length * OXIDES.length);
   known.forEach(({ unity }, i) => {
     steps.set(stepsOf(unity), i * OXIDES.length);
@@ -109,9 +112,7 @@ export function surroundings(
   squares: Float64Array,
   coneIndex: number,
 ): Surroundings {
-  const distance = squares.map((square, i) =>
-    Math.hypot(Math.sqrt(square), (tiles[i]!.heat!.coneIndex - coneIndex) / CONES_PER_STEP),
-  );
+  const distance = distances(tiles, squares, coneIndex);
   const within = (radius: number) => distance.reduce((n, d) => n + (d <= radius ? 1 : 0), 0);
   const tilesWithinEdge = within(EDGE_STEPS);
   const support =
@@ -124,12 +125,40 @@ export function surroundings(
   return { support, tilesWithinEdge, nearest };
 }
 
+/**
+ * All tiles within a radius of a point at a cone, nearest first.
+ *
+ * @param experience - tiles
+ * @param squares - from `squaredSteps` for the point
+ * @param coneIndex - heat work asked about
+ * @param radius - steps
+ * @returns the tiles with their distances
+ */
+export function tilesWithin(
+  { tiles }: Experience,
+  squares: Float64Array,
+  coneIndex: number,
+  radius: number,
+): NearTile[] {
+  const distance = distances(tiles, squares, coneIndex);
+  return tiles
+    .map((tile, i) => nearTile(tile, distance[i]!))
+    .filter((_, i) => distance[i]! <= radius)
+    .sort((a, b) => a.distance - b.distance);
+}
+
+function distances(tiles: readonly Tile[], squares: Float64Array, coneIndex: number): Float64Array {
+  return squares.map((square, i) =>
+    Math.hypot(Math.sqrt(square), (tiles[i]!.heat!.coneIndex - coneIndex) / CONES_PER_STEP),
+  );
+}
+
 function nearTile({ tile, verdict, heat }: Tile, distance: number): NearTile {
   const rounded = Math.round(distance * 1000) / 1000;
   return { tile, surface: verdict, cone: heat!.cone, distance: rounded };
 }
 
-/** Places of the smallest values, smallest first; equal ones in the order of the tiles. */
+/** Places of the smallest values, smallest first; equal ones by name of the tile. */
 function smallest(values: Float64Array, count: number): number[] {
   const found: number[] = [];
   values.forEach((value, i) => {

@@ -32,6 +32,7 @@ export function middleComposition(tiles: readonly JudgedTile[]): Point {
 const MOST_COMPARED = 1000;
 
 function sampled(tiles: readonly JudgedTile[]): JudgedTile[] {
+  const sorted = [...tiles].sort((a, b) => (a.tile < b.tile ? -1 : 1));
   const every = Math.ceil(tiles.length / MOST_COMPARED);
-  return tiles.filter((_, i) => i % every === 0);
+  return sorted.filter((_, i) => i % every === 0);
 }

@@ -17,10 +17,14 @@ export interface PlacePosterior {
   readonly noCrossing: number;
 }
 
+/** Share of the draws that must know a place for an interval to mean something. */
+const LEAST_KNOWN = 0.1;
+
 /**
  * 90 % interval of a place, and how often there is none in the range.
  *
- * Draws in which the place has left the range count at that end, which is then null.
+ * Draws in which the place has left the range count at that end, which is then null. Where fewer than
+ * a tenth of the draws know a place, in the range or beyond, both ends are null.
  *
  * @param places - one a draw
  * @returns interval and share without a crossing
@@ -32,8 +36,9 @@ export function placePosterior(places: readonly Place[]): PlacePosterior {
     .filter((place) => place !== 'none')
     .map((place) => (place === 'below' ? -Infinity : place === 'beyond' ? Infinity : place));
   const crossing = values.filter(Number.isFinite).length;
+  const isKnown = values.length >= LEAST_KNOWN * places.length && values.length > 0;
   const end = (p: number) => {
-    const value = values.length === 0 ? Number.NaN : quantile(values, p);
+    const value = isKnown ? quantile(values, p) : Number.NaN;
     return Number.isFinite(value) ? value : null;
   };
   return { interval90: [end(0.05), end(0.95)], noCrossing: 1 - crossing / places.length };

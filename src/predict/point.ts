@@ -1,6 +1,6 @@
 import { nameAdvice } from '../archive/nearest-name.ts';
 import { quoted } from '../archive/found-text.ts';
-import { isOxide, OXIDES, type Oxide } from '../chemistry/oxides.ts';
+import { FLUXES, isOxide, OXIDES, type Oxide } from '../chemistry/oxides.ts';
 import { toUnity } from '../chemistry/unity.ts';
 import { CompositionError } from '../errors.ts';
 import type { Model } from '../model/model.ts';
@@ -23,9 +23,12 @@ export function glazePoint(text: string, name = 'glaze'): Point {
   const parts = text.split(/[\s,;]+/).filter((part) => part !== '');
   const moles = new Map<Oxide, number>();
   const faults = parts.flatMap((part) => partFault(part, moles));
+  const names = (oxides: readonly Oxide[]) =>
+    parts.some((part) => oxides.some((oxide) => part.split(/[=:]/)[0] === oxide));
   for (const oxide of ['SiO2', 'Al2O3'] as const) {
-    if (faults.length === 0 && !moles.has(oxide)) faults.push(`expected ${oxide}=..., found none`);
+    if (!names([oxide])) faults.push(`expected ${oxide}=..., found none`);
   }
+  if (!names(FLUXES)) faults.push(`expected a flux, found none of ${FLUXES.join(', ')}`);
   if (faults.length > 0) {
     throw new CompositionError(
       `${quoted(text)} is no composition\n${faults.map((fault) => `  ${fault}`).join('\n')}`,
@@ -43,6 +46,7 @@ function partFault(part: string, moles: Map<Oxide, number>): string[] {
   if (!/^\d*\.?\d+(e-?\d+)?$/i.test(amount) || !(Number(amount) < 1e6)) {
     return [`expected moles of ${oxide} such as 0.42, got ${quoted(amount)}`];
   }
+  if (oxide === 'SiO2' && !(Number(amount) > 0)) return ['expected SiO2 above 0, got 0'];
   if (moles.has(oxide)) return [`expected ${oxide} once, got it again (${quoted(part)})`];
   moles.set(oxide, Number(amount));
   return [];

@@ -5,7 +5,7 @@ import {
   EDGE_STEPS,
   experienceOf,
   squaredSteps,
-  surroundings,
+  tilesWithin,
   type Experience,
 } from './experience.ts';
 import { posteriorDraws } from './posterior-draws.ts';
@@ -69,9 +69,9 @@ function overfiredNear(
   const squares = squaredSteps(experience, unity);
   const near = new Map<string, NearTile>();
   for (const cone of cones) {
-    for (const tile of surroundings(experience, squares, cone).nearest) {
+    for (const tile of tilesWithin(experience, squares, cone, EDGE_STEPS)) {
       const known = near.get(tile.tile);
-      if (tile.distance > EDGE_STEPS || (known && known.distance <= tile.distance)) continue;
+      if (known && known.distance <= tile.distance) continue;
       near.set(tile.tile, tile);
     }
   }

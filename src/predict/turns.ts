@@ -27,9 +27,10 @@ interface Change {
  * The cones at which the most probable surface of a glaze changes.
  *
  * The place comes from the posterior mean probabilities. Its interval is taken over draws of the
- * posterior: in each, the nearest change from the same surface to the same surface. A draw that at the
- * place still has the old surface counts as turning beyond the range if it does not turn in it, one
- * that has the new one already as turning below it; one with the third surface has no such turn.
+ * posterior: in each, the nearest change from the same surface to the same surface. A draw that keeps
+ * the old surface from the place to the end of the range counts as turning beyond it, one that has had
+ * the new one all the way up to the place as turning below it; one that goes over the third surface
+ * has no such turn.
  *
  * @param model - fitted model
  * @param draws - posterior draws of both stages
@@ -122,10 +123,10 @@ function turnPlace(path: DrawPath, nodes: readonly number[], turn: Change): Plac
       same.map((change) => crossing(path, nodes, change)),
       turn.at,
     );
-  const nearestNode = nearestPlace(nodes, turn.at);
-  const there = path.surfaces[nodes.indexOf(nearestNode)];
-  if (there === turn.from) return 'beyond';
-  return there === turn.to ? 'below' : 'none';
+  const there = nodes.indexOf(nearestPlace(nodes, turn.at));
+  if (path.surfaces.slice(there).every((surface) => surface === turn.from)) return 'beyond';
+  const before = path.surfaces.slice(0, there + 1);
+  return before.every((surface) => surface === turn.to) ? 'below' : 'none';
 }
 
 function crossing(

@@ -37,13 +37,16 @@ export function shiftInWords(answers: readonly ConeAnswer[]): string {
  * // 'as likely underfired as gloss'
  */
 export function surfaceInWords(probability: SurfaceProbability): string {
-  const [first, second] = [...SURFACES].sort((a, b) => probability[b] - probability[a]) as [
+  const [first, second, third] = [...SURFACES].sort((a, b) => probability[b] - probability[a]) as [
+    Surface,
     Surface,
     Surface,
   ];
   const lead = probability[first] - probability[second];
   if (probability[first] >= SURE) return `almost surely ${first}`;
   if (probability[first] >= LIKELY) return `most likely ${first}`;
+  if (probability[first] - probability[third] <= EQUAL)
+    return 'any surface about as likely as another';
   if (lead <= EQUAL) return `as likely ${inOrder(first, second).join(' as ')}`;
   return `rather ${first} than ${second}, but far from sure`;
 }

@@ -96,15 +96,13 @@ describe('published verdicts, whole series left out', () => {
     expect(counts).toEqual([24, 7, 32]);
   });
 
-  // 15 x 9 pairs: one pair is 0.0074. Of the 135, 101 are ranked rightly: 0.748, which is 0.75 to the
-  // two places of the aim. The three test cones that cost most are at odds with each other: Al2O3 0.25
-  // with SiO2 4.5 "melted", with SiO2 3 only "partly".
-  it('ranks the test cones of Seger 1886 with an area under the ROC curve of 0.75', () => {
+  // 15 x 9 pairs, of which 101 are ranked rightly. The aim was 0.75: 102 pairs. The test cones that cost
+  // most are at odds with each other: Al2O3 0.25 with SiO2 4.5 "melted", with SiO2 3 only "partly".
+  it('ranks the test cones of Seger 1886 with an area of 0.748, one pair short of 0.75', () => {
     const area = areaUnderRoc(of('seger39'));
     const [low, high] = bootstrapInterval(of('seger39'), 1);
     expect(area).toBeCloseTo(101 / 135, 6);
-    expect(Number(area.toFixed(2))).toBeGreaterThanOrEqual(0.75);
-    expect([low, high].map((end) => Number(end.toFixed(2)))).toEqual([0.54, 0.93]);
+    expect([low, high].map((end) => Number(end.toFixed(2)))).toEqual([0.56, 0.93]);
   });
 
   it('ranks the porcelain glazes of Lauth & Dutailly 1888 with an area of at least 0.75', () => {
@@ -112,6 +110,6 @@ describe('published verdicts, whole series left out', () => {
     const [low, high] = bootstrapInterval(of('lauth'), 1);
     expect(area).toBeGreaterThanOrEqual(0.75);
     expect(Number(area.toFixed(3))).toBe(0.82);
-    expect([low, high].map((end) => Number(end.toFixed(2)))).toEqual([0.67, 0.97]);
+    expect([low, high].map((end) => Number(end.toFixed(2)))).toEqual([0.65, 0.96]);
   });
 });

@@ -1,0 +1,54 @@
+import { expect, it } from 'vitest';
+import { fitUnvalidated } from '../../src/model/fit.ts';
+import { columnValues, scaledInputs } from '../../src/model/inputs.ts';
+import { SURFACES, type Surface } from '../../src/model/model.ts';
+import { sigmoid } from '../../src/numeric/logistic.ts';
+import { seededGenerator } from '../../src/numeric/random.ts';
+import { posteriorDraws } from '../../src/predict/posterior-draws.ts';
+import { shift } from '../../src/predict/shift.ts';
+import { anArchive } from '../support/builders.ts';
+import { drawnUnity, inventedTiles } from '../support/invented-tiles.ts';
+
+const model = fitUnvalidated(anArchive(inventedTiles({ tiles: 80, seed: 31 })));
+const draws = posteriorDraws(model);
+const cones = Array.from({ length: 81 }, (_, i) => 4 + i / 20);
+
+it('a draw that turns over the third surface inside the range leaves no end of the interval open', () => {
+  const source = seededGenerator(3);
+  for (let glaze = 0; glaze < 12; glaze++) {
+    const unity = drawnUnity(source);
+    const rows = (['melt', 'gloss'] as const).map((stage) => {
+      const { columns, weights, count } = draws[stage];
+      const design = cones.map((cone) => columnValues(scaledInputs(unity, cone), columns));
+      return Array.from({ length: count }, (_, d) =>
+        design.map((row) =>
+          row.reduce((sum, x, j) => sum + x * weights[d * columns.length + j], 0),
+        ),
+      );
+    });
+    const paths = rows[0].map((melt, d) =>
+      melt.map((value, i): Surface => {
+        const [m, g] = [sigmoid(value), sigmoid(rows[1][d][i])];
+        const p = { underfired: 1 - m, matte: m * (1 - g), gloss: m * g };
+        return SURFACES.reduce<Surface>((a, b) => (p[b] > p[a] ? b : a), 'underfired');
+      }),
+    );
+    for (const turn of shift(model, [{ point: 'P', unity }], [5, 6, 7]).points[0].turns) {
+      const at = Math.round((turn.coneIndex - 4) * 20);
+      const turning = paths.filter((path) =>
+        path.some((s, i) => i > 0 && path[i - 1] === turn.from && s === turn.to),
+      ).length;
+      const beyond = paths.filter((path) => path.slice(at).every((s) => s === turn.from)).length;
+      const below = paths.filter((path) =>
+        path.slice(0, at + 1).every((s) => s === turn.to),
+      ).length;
+      const all = turning + beyond + below;
+      if (Math.abs(beyond / all - 0.05) > 0.01) {
+        expect(turn.interval90[1] === null).toBe(beyond / all > 0.05);
+      }
+      if (Math.abs(below / all - 0.05) > 0.01) {
+        expect(turn.interval90[0] === null).toBe(below / all > 0.05);
+      }
+    }
+  }
+});
