@@ -20,7 +20,8 @@ export function tileNotes(tiles: readonly Tile[], bodies: Register<Body> | undef
     ...note(
       count(({ heat }) => heat?.source === 'set cone'),
       (n) =>
-        `${counted(n, 'tile')} with the cone that the kiln was set to: no witness cone was read`,
+        `${counted(n, 'tile')} with the cone that the kiln was set to: no witness cone was read for their ` +
+        'shelf or firing',
     ),
     ...note(
       count(({ firing }) => firing === undefined),

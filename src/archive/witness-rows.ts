@@ -26,14 +26,14 @@ export const witnessKind = {
 type WitnessValues = RowValues<ReturnType<typeof columns>>;
 
 /**
- * The name of one shelf of one firing, in the register of witness cones.
+ * The name of one shelf of one firing, in the register of witness cones; capitals make no difference.
  *
  * @param firing - name of the firing
  * @param shelf - name of the shelf
  * @returns a text that no other pair shares
  */
 export function shelfKey(firing: string, shelf: string): string {
-  return JSON.stringify([firing, shelf]);
+  return JSON.stringify([firing, shelf.toLowerCase()]);
 }
 
 /**

@@ -131,7 +131,7 @@ describe('an archive folder', () => {
       'recipes.csv: recipe "Spotted" lists "Whiting" in lines 6 and 7; all count',
       'recipes.csv:8 recipe "Wash": expected a flux, found none (oxides given: Fe2O3); ' +
         'left out, no tile uses it',
-      '2 tiles with the cone that the kiln was set to: no witness cone was read',
+      '2 tiles with the cone that the kiln was set to: no witness cone was read for their shelf or firing',
       '1 tile not judged yet: kept, not fitted',
       'body "Stonware" of the tiles is not in bodies.csv; nearest known: "Stoneware"',
     ]);
