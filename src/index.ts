@@ -33,7 +33,9 @@ export type * from './archive/archive.ts';
 export { ARCHIVE_FILES } from './archive/archive-files.ts';
 export { inventory, type Inventory } from './archive/inventory.ts';
 export { parseArchive, readArchive, type ParseOptions } from './archive/read-archive.ts';
-export { readPoints } from './archive/read-points.ts';
+export { readGlaze, type GlazeRead } from './archive/glaze-text.ts';
+export { compositionDoubts } from './archive/odd-compositions.ts';
+export { readPoints, type PointsRead } from './archive/read-points.ts';
 
 export * from './model/model.ts';
 export { fitModel, type FitOptions } from './model/fit.ts';
@@ -56,4 +58,4 @@ export { predictionPage } from './render/prediction-page.ts';
 export { shiftPage } from './render/shift-page.ts';
 export { boundaryPage } from './render/boundary-page.ts';
 export { unityPage, type RecipeUnity } from './render/unity-page.ts';
-export { checkAnswer, fitAnswer, unityAnswer } from './render/answers-json.ts';
+export { checkAnswer, fitAnswer, unfittedAnswer, unityAnswer } from './render/answers-json.ts';

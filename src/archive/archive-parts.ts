@@ -1,4 +1,5 @@
 import type { z } from 'zod';
+import { recipeUnity } from '../chemistry/recipe.ts';
 import type { Fault } from '../errors.ts';
 import type { Body, Firing, Material, Recipe, WitnessReading } from './archive.ts';
 import type { FilesFound } from './archive-files.ts';
@@ -6,7 +7,9 @@ import { bodyKind, bodyRows } from './body-rows.ts';
 import { firingKind, firingRows } from './firing-rows.ts';
 import { materialKind, materialRows } from './material-rows.ts';
 import { recipeKind, recipeRows, type RecipesRead } from './recipe-rows.ts';
+import { inNameOrder } from './name-order.ts';
 import { register, type Register } from './register.ts';
+import { withRepeatsMarked } from './repeated-recipe-lines.ts';
 import { readSheet, type RowValues, type Sheet, type SheetKind } from './sheet.ts';
 import { witnessKind, witnessRows } from './witness-rows.ts';
 
@@ -61,7 +64,9 @@ export function archiveParts(found: FilesFound): ArchiveParts {
   const materialSheet = openSheet(found, materialKind);
   const materials = partOf(materialSheet, 'material', materialRows);
   const recipeSheet = openSheet(found, recipeKind);
-  const recipesRead = recipeSheet ? recipeRows(recipeSheet, materials.register) : NO_RECIPES;
+  const recipesRead = recipeSheet
+    ? inAnyOrder(recipeRows(withRepeatsMarked(recipeSheet), materials.register), materials.register)
+    : NO_RECIPES;
   const recipes = partOf(recipeSheet, 'recipe', () => recipesRead);
   const bodySheet = openSheet(found, bodyKind);
   const bodies = partOf(bodySheet, 'body', bodyRows);
@@ -76,6 +81,23 @@ export function archiveParts(found: FilesFound): ArchiveParts {
     sheets: sheets.filter((sheet) => sheet !== undefined),
     faults: [firings, witness, recipes, materials, bodies].flatMap(({ faults }) => faults),
   };
+}
+
+/**
+ * Recipes whose unity formula is the same to the last bit in whatever order their lines stand: sums of
+ * the same numbers in another order differ by a rounding.
+ */
+function inAnyOrder(read: RecipesRead, materials: Register<Material> | undefined): RecipesRead {
+  const molesOf = (material: string) => materials?.sound.get(material)?.molesPer100g ?? {};
+  const sound = [...read.sound].map(([name, recipe]): [string, Recipe] => {
+    const lines = inNameOrder(recipe.lines, ({ material, parts }) => `${material} ${parts}`);
+    const parts = lines.map((line) => ({
+      parts: line.parts,
+      molesPer100g: molesOf(line.material),
+    }));
+    return [name, { ...recipe, unity: recipeUnity(parts) }];
+  });
+  return { ...read, sound: new Map(sound) };
 }
 
 interface RowsRead<Value> {

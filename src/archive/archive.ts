@@ -136,6 +136,7 @@ export interface Archive {
   readonly tiles: readonly Tile[];
   readonly firings: readonly Firing[];
   readonly witness: readonly WitnessReading[];
+  /** By name. */
   readonly recipes: readonly Recipe[];
   readonly materials: readonly Material[];
   readonly bodies: readonly Body[];

@@ -52,5 +52,5 @@ export function bodyRows(sheet: Sheet<BodyValues>): Collected<Body> {
           });
     return { name, line, value, faults };
   });
-  return collectByName(rows, sheet.file, 'body');
+  return collectByName(rows, sheet.file, 'body', sheet.headFaults.length === 0);
 }

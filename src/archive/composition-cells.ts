@@ -66,17 +66,25 @@ export function unityOfCells(
     message: `expected moles of ${column}${column === 'B2O3' ? ', 0 if there is none' : ''}, got a blank cell`,
   }));
   if (blanks.length > 0 || OXIDES.some(isUnread)) return { faults: blanks };
-  // Only what is there: a column of noughts is the same as no column.
-  const held = OXIDES.filter((oxide) => (values[oxide] ?? 0) > 0);
-  const moles: Moles = Object.fromEntries(held.map((oxide) => [oxide, values[oxide] ?? 0]));
   try {
-    const unity = toUnity(moles);
+    const unity = toUnity(molesOfCells(values));
     const problem = glazeProblem(unity);
     return problem === undefined ? { unity } : { faults: [problem] };
   } catch (error) {
     if (!(error instanceof CompositionError)) throw error;
     return { faults: [{ column: '', message: error.message }] };
   }
+}
+
+/**
+ * The oxides that a row holds, at its own scale: a column of noughts is the same as no column.
+ *
+ * @param values - the cells of its oxide columns
+ * @returns moles above 0
+ */
+export function molesOfCells(values: OxideValues): Moles {
+  const held = OXIDES.filter((oxide) => (values[oxide] ?? 0) > 0);
+  return Object.fromEntries(held.map((oxide) => [oxide, values[oxide] ?? 0]));
 }
 
 /**

@@ -21,6 +21,8 @@ export interface Table {
   readonly file: string;
   readonly encoding: Encoding;
   readonly separator: Separator;
+  /** A first line such as `sep=;`, by which some spreadsheets tell the separator. */
+  readonly separatorLine?: string;
   readonly headings: readonly string[];
   readonly headingLine: number;
   /** Rows below the headings that hold anything. */
@@ -43,23 +45,39 @@ export function readTable(
   const wholeFile = (message: string) => ({ fault: { file, line: 0, column: '', message } });
   const decoded = decodeText(bytes);
   if ('problem' in decoded) return wholeFile(decoded.problem);
-  const separator = separatorOf(decoded.text);
-  const { text, stray } = strayQuotes(decoded.text, separator);
+  const told = toldSeparator(decoded.text);
+  if (told !== undefined && told.separator === undefined) {
+    return wholeFile(`expected sep= with a comma, semicolon or tab, ${got(told.line)}`);
+  }
+  // Blanked and not cut, so that lines keep their numbers.
+  const below = decoded.text.slice(told?.line.length ?? 0);
+  const separator = told?.separator ?? separatorOf(below);
+  const { text, stray } = strayQuotes(below, separator);
   const [first, ...rows] = withFaults(file, rowsOf(text, separator), stray);
   if (first === undefined) return wholeFile('expected a line of headings, got an empty file');
   const { encoding } = decoded;
   const faults = [...first.faults, ...sizeFaults(file, first, rows.length)];
   const headings = first.cells.map((cell) => cell.trim());
   const table = { file, encoding, separator, headings, headingLine: first.line, rows, faults };
-  return { table };
+  return { table: told === undefined ? table : { ...table, separatorLine: told.line.trim() } };
+}
+
+const SEPARATORS: readonly Separator[] = [',', ';', '\t'];
+
+/** The separator that the first line tells, if it does; undefined in it where it is none of ours. */
+function toldSeparator(
+  text: string,
+): { line: string; separator: Separator | undefined } | undefined {
+  const [line, character] = /^"?sep=([^\n"]?)"?[,; \t]*(?=\n|$)/i.exec(text) ?? [];
+  if (line === undefined) return undefined;
+  return { line, separator: SEPARATORS.find((known) => known === character) };
 }
 
 /** Counted outside quotes in the first line that holds anything: the data hold decimal commas. */
 function separatorOf(text: string): Separator {
   const headings = /[^\n]*\S[^\n]*/.exec(text)?.[0].replace(/"[^"]*"/g, '') ?? '';
   const count = (separator: Separator) => headings.split(separator).length;
-  const candidates: readonly Separator[] = [',', ';', '\t'];
-  return candidates.reduce((best, next) => (count(next) > count(best) ? next : best));
+  return SEPARATORS.reduce((best, next) => (count(next) > count(best) ? next : best));
 }
 
 function rowsOf(text: string, separator: Separator): TableRow[] {

@@ -66,7 +66,7 @@ export function firingRows(sheet: Sheet<FiringValues>): Collected<Firing> {
     const value = isSound ? firingOf(name, row) : undefined;
     return { name, line: row.line, value, faults };
   });
-  return collectByName(rows, sheet.file, 'firing');
+  return collectByName(rows, sheet.file, 'firing', sheet.headFaults.length === 0);
 }
 
 function coneFaults(sheet: Sheet<FiringValues>, row: SheetRow<FiringValues>): Fault[] {

@@ -11,6 +11,8 @@ export interface Headings {
   readonly places: ReadonlyMap<string, number>;
   /** Columns that are not known: kept, not read. */
   readonly unknown: readonly { readonly heading: string; readonly place: number }[];
+  /** Known columns that faulty headings are nearest to: not missing, only misspelt. */
+  readonly meant: ReadonlySet<string>;
   readonly faults: readonly Fault[];
   readonly notes: readonly string[];
 }
@@ -24,13 +26,14 @@ export interface Headings {
  *
  * @param table - the table
  * @param known - the names it may have
- * @returns places, unknown columns, faults and notes
+ * @returns places, unknown columns, columns meant by faulty headings, faults and notes
  */
 export function mapHeadings(table: Table, known: readonly string[]): Headings {
   const { file, headingLine: line } = table;
   const bySpelling = new Map(known.map((name) => [spelling(name), name]));
   const places = new Map<string, number>();
   const unknown: { heading: string; place: number }[] = [];
+  const meant = new Set<string>();
   const faults: Fault[] = [];
   const notes: string[] = [];
   const seen = new Map<string, number>();
@@ -50,34 +53,48 @@ export function mapHeadings(table: Table, known: readonly string[]): Headings {
     } else {
       const problem = headingProblem(heading, known);
       if (problem === undefined) unknown.push({ heading, place });
-      else fault(problem);
+      else fault(problem.message);
+      for (const column of problem?.nearest ?? []) meant.add(column);
     }
   }
-  return { places, unknown, faults, notes };
+  return { places, unknown, meant, faults, notes };
 }
 
 function spelling(heading: string): string {
   return heading.normalize('NFKC').toLowerCase();
 }
 
-function headingProblem(heading: string, known: readonly string[]): string | undefined {
+interface HeadingProblem {
+  readonly message: string;
+  readonly nearest: readonly string[];
+}
+
+function headingProblem(heading: string, known: readonly string[]): HeadingProblem | undefined {
   if (heading.length > LIMITS.nameCharacters) {
-    return `expected a heading of at most ${LIMITS.nameCharacters} characters, got ${heading.length}`;
+    const message = `expected a heading of at most ${LIMITS.nameCharacters} characters, got ${heading.length}`;
+    return { message, nearest: [] };
   }
+  const misnamed = (what: string, nearest: readonly string[]) => ({
+    message: `expected ${what}, got ${quoted(heading)}; nearest known: ${listed(nearest)}`,
+    nearest,
+  });
   const oxide = known.some(isOxide) ? nearestOxides(heading, known) : [];
-  if (oxide.length > 0) {
-    return `expected an oxide that is known, got ${quoted(heading)}; nearest known: ${listed(oxide)}`;
-  }
+  if (oxide.length > 0) return misnamed('an oxide that is known', oxide);
   const missed = nearestNames(heading, known).filter((name) => isNearMiss(heading, name));
-  if (missed.length === 0) return undefined;
-  return `expected a known column, got ${quoted(heading)}; nearest known: ${listed(missed)}`;
+  return missed.length === 0 ? undefined : misnamed('a known column', missed);
 }
 
 /**
+ * Whether a word is a known name but for a slip.
+ *
  * One slip in a short name, two in a longer one: `notes`, `surfce`, `set cone`, `Si02`, `A12O3`. A word
  * without a digit is no slip of an oxide: `No.` is not NiO.
+ *
+ * @param heading - the word
+ * @param name - a known name
+ * @returns true if it is
  */
-function isNearMiss(heading: string, name: string): boolean {
+export function isNearMiss(heading: string, name: string): boolean {
   if (isOxide(name)) return /\d/.test(heading) && slips(heading, name) <= (name.length < 5 ? 1 : 2);
   return slips(heading, name) <= (name.length <= 5 ? 1 : 2);
 }

@@ -5,6 +5,7 @@ import type { Archive, Tile, Verdict } from './archive.ts';
 import { grouped } from './grouped.ts';
 import { kilnAccounts, type KilnAccount } from './kiln-account.ts';
 import { MEASURES, measureOf, type Measure } from './measures.ts';
+import { byName, inNameOrder } from './name-order.ts';
 import { oddities } from './oddities.ts';
 
 /** How many tiles were taken for what. */
@@ -53,14 +54,14 @@ export interface RecipeUse {
 export interface Inventory {
   /** From cool to hot, tiles of unknown heat last. */
   readonly byCone: readonly ConeTiles[];
-  /** In the order of tiles.csv. */
+  /** By name. */
   readonly loads: readonly LoadTiles[];
   /** Tiles without a firing: each is a load of its own. */
   readonly tilesWithoutFiring: number;
   /** Empty where there is no tile. */
   readonly ranges: readonly MeasureRange[];
   readonly otherOxides: readonly OxideUse[];
-  /** The most fired first. */
+  /** The most fired first; those fired equally often by name. */
   readonly recipes: readonly RecipeUse[];
   readonly kilns: readonly KilnAccount[];
   /** What looks odd, in sentences: worth a look, not wrong for certain. */
@@ -78,7 +79,7 @@ export interface Inventory {
  * inventory(archive).byCone.map(({ cone, tiles }) => [cone, tiles.all]); // [['5', 1], ['6', 1]]
  */
 export function inventory(archive: Archive): Inventory {
-  const { tiles, recipes } = archive;
+  const { tiles, recipes, firings, witness } = archive;
   const kilns = kilnAccounts(archive);
   const loads = loadTiles(tiles);
   return {
@@ -89,9 +90,9 @@ export function inventory(archive: Archive): Inventory {
     otherOxides: otherOxides(tiles),
     recipes: recipes
       .map(({ recipe }) => recipeUse(recipe, tiles))
-      .sort((a, b) => b.tiles - a.tiles),
+      .sort((a, b) => b.tiles - a.tiles || byName(a.recipe, b.recipe)),
     kilns,
-    odd: oddities({ tiles, recipes, kilns, loads }),
+    odd: oddities({ tiles, recipes, kilns, loads, firings, witness }),
   };
 }
 
@@ -121,10 +122,11 @@ function tilesByCone(tiles: readonly Tile[]): ConeTiles[] {
 
 function loadTiles(tiles: readonly Tile[]): LoadTiles[] {
   const named = tiles.filter(({ firing }) => firing !== undefined);
-  return [...grouped(named, ({ load }) => load)].map(([load, own]) => ({
-    load,
-    tiles: verdictCounts(own),
-  }));
+  const loads = inNameOrder(
+    grouped(named, ({ load }) => load),
+    ([load]) => load,
+  );
+  return loads.map(([load, own]) => ({ load, tiles: verdictCounts(own) }));
 }
 
 function measureRange(tiles: readonly Tile[], measure: Measure): MeasureRange {

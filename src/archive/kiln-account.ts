@@ -3,6 +3,7 @@ import { median } from '../numeric/summary.ts';
 import { theilSen } from '../numeric/trend.ts';
 import type { Archive, Firing, WitnessReading } from './archive.ts';
 import { grouped } from './grouped.ts';
+import { byName, inNameOrder } from './name-order.ts';
 
 /** A witness cone read in one load; without a shelf where it stands for the whole load. */
 export interface KilnReading {
@@ -16,6 +17,7 @@ export interface KilnFiring {
   readonly firing: string;
   readonly date: string | null;
   readonly setCone: string | null;
+  /** That for the whole load first, then by shelf. */
   readonly readings: readonly KilnReading[];
   /** Median reading less the set cone, cones; null without either. */
   readonly lessSet: number | null;
@@ -42,10 +44,13 @@ export interface KilnTrend {
 export interface KilnAccount {
   /** Null for firings that name no kiln. */
   readonly kiln: string | null;
-  /** By date where all have one, else in the order of firings.csv. */
+  /** By date where all have one, else by name. */
   readonly firings: readonly KilnFiring[];
+  /** False where a firing has no date, so that nothing but the names tells their order. */
+  readonly isDated: boolean;
   /** Median of (reading less set cone), cones; null without readings. */
   readonly lessSet: number | null;
+  /** The hottest first. */
   readonly shelves: readonly ShelfAccount[];
   /** Null with fewer than three firings read. */
   readonly trend: KilnTrend | null;
@@ -64,7 +69,7 @@ const MOST_READINGS = 1000;
  * the latest count.
  *
  * @param archive - firings and witness cones
- * @returns kilns in the order of firings.csv, firings without a kiln last
+ * @returns kilns by name, firings without a kiln last
  */
 export function kilnAccounts({
   firings,
@@ -75,7 +80,8 @@ export function kilnAccounts({
     kilnAccount(kiln, own, read),
   );
   const isNamed = ({ kiln }: KilnAccount) => kiln !== null;
-  return [...kilns.filter(isNamed), ...kilns.filter((account) => !isNamed(account))];
+  const named = inNameOrder(kilns.filter(isNamed), ({ kiln }) => kiln ?? '');
+  return [...named, ...kilns.filter((account) => !isNamed(account))];
 }
 
 function kilnAccount(
@@ -88,6 +94,7 @@ function kilnAccount(
   return {
     kiln,
     firings,
+    isDated: firings.every(({ date }) => date !== null),
     lessSet: offs.length === 0 ? null : median(offs),
     shelves: shelfAccounts(firings),
     // Firings of several unnamed kilns are no history of one.
@@ -96,13 +103,16 @@ function kilnAccount(
 }
 
 function inTime(firings: readonly Firing[]): readonly Firing[] {
-  if (firings.some(({ date }) => date === undefined)) return firings;
-  return [...firings].sort((a, b) => (a.date! < b.date! ? -1 : Number(a.date! > b.date!)));
+  const named = inNameOrder(firings, ({ firing }) => firing);
+  if (firings.some(({ date }) => date === undefined)) return named;
+  return named.sort((a, b) => (a.date! < b.date! ? -1 : Number(a.date! > b.date!)));
 }
 
 function kilnFiring(firing: Firing, onShelves: readonly WitnessReading[]): KilnFiring {
   const whole = firing.cone === undefined ? [] : [readingOf(null, firing.cone)];
-  const shelves = onShelves.map(({ shelf, cone }) => readingOf(shelf, cone));
+  const shelves = inNameOrder(onShelves, ({ shelf }) => shelf).map(({ shelf, cone }) =>
+    readingOf(shelf, cone),
+  );
   const { date = null, setCone = null } = firing;
   const one = { firing: firing.firing, date, setCone, readings: [...whole, ...shelves] };
   const offs = offsOf(one);
@@ -132,11 +142,13 @@ function shelfAccounts(firings: readonly KilnFiring[]): ShelfAccount[] {
     const middle = median(onShelves.map(({ coneIndex: index }) => index));
     return onShelves.map(({ shelf, coneIndex: index }) => ({ shelf: shelf!, off: index - middle }));
   });
-  return [...grouped(placed, ({ shelf }) => shelf)].map(([shelf, own]) => ({
-    shelf,
+  // 'Top' of one load and 'top' of another are one shelf, as they are for the tiles.
+  const accounts = [...grouped(placed, ({ shelf }) => shelf.toLowerCase()).values()].map((own) => ({
+    shelf: own.map(({ shelf }) => shelf).sort(byName)[0]!,
     readings: own.length,
     lessLoad: median(own.map(({ off }) => off)),
   }));
+  return accounts.sort((a, b) => b.lessLoad - a.lessLoad || byName(a.shelf, b.shelf));
 }
 
 function trendOf(firings: readonly KilnFiring[]): KilnTrend | null {

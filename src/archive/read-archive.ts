@@ -3,6 +3,7 @@ import type { Archive, ArchiveReading, Tile, TileCounts } from './archive.ts';
 import { ARCHIVE_FILES, archiveFiles, type FilesFound } from './archive-files.ts';
 import { archiveParts, openSheet } from './archive-parts.ts';
 import { fingerprint } from './fingerprint.ts';
+import { byName, inNameOrder } from './name-order.ts';
 import type { RecipesRead } from './recipe-rows.ts';
 import type { Register } from './register.ts';
 import { tileKind } from './tile-columns.ts';
@@ -41,14 +42,14 @@ export function readArchive(files: ReadonlyMap<string, Uint8Array>): ArchiveRead
     tiles,
     firings: valuesOf(firings),
     witness: valuesOf(witness),
-    recipes: valuesOf(recipes),
+    recipes: inNameOrder(valuesOf(recipes), ({ recipe }) => recipe),
     materials: valuesOf(materials),
     bodies: valuesOf(bodies),
     counts: tileCounts(sheet?.rows.length ?? 0, tiles),
     notes: [
       ...found.notes,
       ...sheets.flatMap(({ notes }) => notes),
-      ...parts.recipesRead.notes,
+      ...[...parts.recipesRead.notes].sort(byName),
       ...unusable.notes,
       ...tileNotes(tiles, bodies),
     ],
@@ -103,7 +104,7 @@ function tileCounts(read: number, tiles: readonly Tile[]): TileCounts {
 
 /** A recipe without a flux is a fault where a tile is made of it; a slip or a wash may well have none. */
 function unusableRecipes({ withoutUnity }: RecipesRead, used: ReadonlySet<string>) {
-  const entries = [...withoutUnity];
+  const entries = inNameOrder(withoutUnity, ([recipe]) => recipe);
   return {
     faults: entries.filter(([recipe]) => used.has(recipe)).map(([, fault]) => fault),
     notes: entries

@@ -1,6 +1,8 @@
 import type { Fault } from '../errors.ts';
 import { quoted } from './found-text.ts';
+import { byName } from './name-order.ts';
 import { nameAdvice, type NameAdvice } from './nearest-name.ts';
+import { repeatedNames } from './repeated-names.ts';
 
 /** What one file of the archive defines by name, for the rows of other files that refer to it. */
 export interface Register<Value> {
@@ -33,7 +35,8 @@ export function register<Value>(
   faulty: ReadonlyMap<string, number>,
   unreadable: boolean,
 ): Register<Value> {
-  const advice = nameAdvice(new Set([...sound.keys(), ...faulty.keys()]));
+  const names = new Set([...sound.keys(), ...faulty.keys()]);
+  const advice = nameAdvice([...names].sort(byName));
   const nothing = new Map<string, Value>();
   return { file, noun, sound: unreadable ? nothing : sound, faulty, unreadable, advice };
 }
@@ -72,30 +75,36 @@ export interface Collected<Value> {
 }
 
 /**
- * Sorts named rows into sound and faulty ones; a name that comes twice is a fault of its second row.
+ * Sorts named rows into sound and faulty ones; a name that comes more than once is a fault of each of
+ * its rows, and what it stands for is not known.
  *
  * @param rows - name, line, what the row says if it is sound, and its faults
  * @param file - the file as the user knows it
  * @param column - the column that holds the name
+ * @param isWhole - false if the headings are faulty: two rows may then differ in what was not read
  * @returns sound values and lines of faulty rows by name, and all faults
  */
-export function collectByName<Value>(
-  rows: Iterable<NamedRow<Value>>,
+export function collectByName<Value extends object>(
+  rows: readonly NamedRow<Value>[],
   file: string,
   column: string,
+  isWhole = true,
 ): Collected<Value> {
   const collected: Collected<Value> = { sound: new Map(), faulty: new Map(), faults: [] };
-  const firstLine = new Map<string, number>();
-  for (const { name, label = name ?? '', line, value, faults } of rows) {
-    const first = name === undefined ? undefined : firstLine.get(name);
-    const repeated = first === undefined ? [] : [repeatedName(file, line, column, label, first)];
-    collected.faults.push(...faults, ...repeated);
-    if (name === undefined || first !== undefined) continue;
-    firstLine.set(name, line);
-    if (value === undefined) collected.faulty.set(name, line);
-    else collected.sound.set(name, value);
+  const given = rows.map((row) => ({ ...row, said: () => (isWhole ? saidBy(row) : undefined) }));
+  const repeated = repeatedNames(given, file, column);
+  for (const { name, line, value, faults } of rows) {
+    const ofName = repeated.get(line);
+    collected.faults.push(...faults, ...(ofName === undefined ? [] : [ofName]));
+    if (name === undefined) continue;
+    if (value !== undefined && ofName === undefined) collected.sound.set(name, value);
+    else if (!collected.faulty.has(name)) collected.faulty.set(name, line);
   }
   return collected;
+}
+
+function saidBy<Value extends object>({ value }: NamedRow<Value>): string | undefined {
+  return value === undefined ? undefined : JSON.stringify({ ...value, line: 0 });
 }
 
 export interface NamedRow<Value> {
@@ -106,25 +115,4 @@ export interface NamedRow<Value> {
   /** Undefined where the row has faults. */
   readonly value: Value | undefined;
   readonly faults: readonly Fault[];
-}
-
-/**
- * The fault of a name that was used before.
- *
- * @param file - file
- * @param line - line of the second use
- * @param column - column of the name
- * @param name - the name
- * @param first - line of the first use
- * @returns a fault that names both lines
- */
-export function repeatedName(
-  file: string,
-  line: number,
-  column: string,
-  name: string,
-  first: number,
-): Fault {
-  const message = `expected each ${column} once, got ${quoted(name)} as in line ${first}`;
-  return { file, line, column, message };
 }

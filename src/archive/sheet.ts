@@ -22,6 +22,13 @@ export interface SheetKind<Shape extends z.ZodRawShape> {
   readonly numbers: readonly string[];
   /** What is missing, given the columns that are there: a message and the column it stands under. */
   readonly missing: (has: (column: string) => boolean) => readonly MissingColumn[];
+  /** What becomes of a column that is not known; kept as written where not said. */
+  readonly unknownColumns?: string;
+  /** What its sound headings and rows ask to be said, file name left out. */
+  readonly noted?: (
+    rows: readonly RowValues<Shape>[],
+    has: (column: string) => boolean,
+  ) => readonly string[];
 }
 
 export interface MissingColumn {
@@ -76,19 +83,22 @@ export function readSheet<Shape extends z.ZodRawShape>(
   const places = kind.numbers.flatMap((column) => headings.places.get(column) ?? []);
   const style = { mark: decimalMark(table, places), allowsComma: table.separator !== ',' };
   const has = (column: string) => headings.places.has(column);
-  const missing = headings.faults.length > 0 ? [] : kind.missing(has);
-  const column = { file, line: table.headingLine };
-  return {
-    file,
-    rows: readRows(table, headings, kind.columns(style)),
-    has,
-    headFaults: [
-      ...table.faults,
-      ...headings.faults,
-      ...missing.map((fault) => ({ ...column, ...fault })),
-    ],
-    notes: sheetNotes(table, headings, style),
-  };
+  // A misspelt column is a fault already, and not missing beside it.
+  const missing = kind.missing((column) => has(column) || headings.meant.has(column));
+  const place = { file, line: table.headingLine };
+  const headFaults = [
+    ...table.faults,
+    ...headings.faults,
+    ...missing.map((fault) => ({ ...place, ...fault })),
+  ];
+  const rows = readRows(table, headings, kind.columns(style));
+  const values = rows.map((row) => row.values);
+  const noted = headFaults.length > 0 ? [] : (kind.noted?.(values, has) ?? []);
+  const notes = [
+    ...sheetNotes(table, headings, style, kind.unknownColumns ?? 'kept as written'),
+    ...noted.map((note) => `${file}: ${note}`),
+  ];
+  return { file, rows, has, headFaults, notes };
 }
 
 function readRows<Shape extends z.ZodRawShape>(table: Table, headings: Headings, shape: Shape) {
@@ -134,18 +144,24 @@ function otherCells({ unknown }: Headings, { cells }: TableRow) {
 
 const SEPARATOR_WORD = { ',': 'commas', ';': 'semicolons', '\t': 'tabs' } as const;
 
-function sheetNotes(table: Table, headings: Headings, { mark }: CellStyle): string[] {
-  const { file, encoding, separator } = table;
+function sheetNotes(
+  table: Table,
+  headings: Headings,
+  { mark }: CellStyle,
+  unknownColumns: string,
+): string[] {
+  const { file, encoding, separator, separatorLine } = table;
   const notes = [...headings.notes];
   if (encoding !== 'UTF-8') notes.push(`${file}: read as ${encoding}`);
-  if (separator !== ',') {
+  if (separator !== ',' || separatorLine !== undefined) {
+    const told = separatorLine === undefined ? '' : ', as its first line says';
     const decimals = mark === ',' ? ', decimal comma' : ', decimal point';
-    notes.push(`${file}: separated by ${SEPARATOR_WORD[separator]}${decimals}`);
+    notes.push(`${file}: separated by ${SEPARATOR_WORD[separator]}${told}${decimals}`);
   }
   if (headings.unknown.length > 0) {
     const names = headings.unknown.map(({ heading }) => quoted(heading));
     const columns = names.length === 1 ? 'column' : 'columns';
-    notes.push(`${file}: ${columns} ${listed(names, 'and')} not known, kept as written`);
+    notes.push(`${file}: ${columns} ${listed(names, 'and')} not known, ${unknownColumns}`);
   }
   return notes;
 }

@@ -9,7 +9,8 @@ import {
   wordCell,
   yesNoCell,
 } from './cells.ts';
-import { missingOxides, oxideColumns } from './composition-cells.ts';
+import { missingOxides, molesOfCells, oxideColumns } from './composition-cells.ts';
+import { missingColumnNotes, weightNotes } from './composition-notes.ts';
 import type { CellStyle, RowValues } from './sheet.ts';
 
 const THICKNESS = { what: 'a thickness in mm', least: 0, most: 20, reason: 'a coat of glaze' };
@@ -54,7 +55,24 @@ export const tileKind = {
   columns,
   numbers: [...OXIDES, 'cone', 'thickness_mm', 'gloss_units'],
   missing: missingColumns,
+  noted: compositionNotes,
 };
+
+const GIVEN_BY_OXIDES = { noun: 'tile', which: ' given by oxides' };
+
+function compositionNotes(rows: readonly TileValues[], has: (column: string) => boolean): string[] {
+  const given = rows
+    .map(({ tile = '', recipe, ...values }) => ({
+      name: tile,
+      recipe,
+      amounts: molesOfCells(values),
+    }))
+    .filter(({ recipe, amounts }) => recipe === undefined && Object.keys(amounts).length > 0);
+  return [
+    ...missingColumnNotes(has, given.length, GIVEN_BY_OXIDES),
+    ...weightNotes(given, GIVEN_BY_OXIDES),
+  ];
+}
 
 function missingColumns(has: (column: string) => boolean) {
   const hasOxides = OXIDES.some(has);

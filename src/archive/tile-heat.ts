@@ -10,6 +10,8 @@ export interface HeatCells {
   readonly cone?: string | undefined;
   readonly firing?: string | undefined;
   readonly shelf?: string | undefined;
+  /** Peak of its firing in degrees C, where its own row tells it. */
+  readonly peakC?: number | undefined;
 }
 
 /** The heat of a tile, or the column at fault and why. */
@@ -38,7 +40,8 @@ export function tileHeat(
 ): HeatRead {
   const { cone, shelf } = cells;
   if (cone !== undefined) {
-    const problem = firing?.peakC === undefined ? undefined : lostZero(cone, firing.peakC);
+    const peakC = cells.peakC ?? firing?.peakC;
+    const problem = peakC === undefined ? undefined : lostZero(cone, peakC);
     if (problem !== undefined) return { column: 'cone', problem, isMissing: false };
     return { heat: heatOf(cone, 'tile') };
   }

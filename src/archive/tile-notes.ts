@@ -1,5 +1,7 @@
 import type { Body, Tile } from './archive.ts';
 import { counted, listed, quoted } from './found-text.ts';
+import { byName, inNameOrder } from './name-order.ts';
+import { ownPeakC } from './own-peak.ts';
 import type { Register } from './register.ts';
 
 /** Names that a note spells out; beyond that it gives only the number. */
@@ -22,6 +24,10 @@ export function tileNotes(tiles: readonly Tile[], bodies: Register<Body> | undef
       (n) =>
         `${counted(n, 'tile')} with the cone that the kiln was set to: no witness cone was read for their ` +
         'shelf or firing',
+    ),
+    ...note(
+      count(({ heat, other }) => heat?.source === 'tile' && ownPeakC(other) !== undefined),
+      (n) => `peak_c of ${counted(n, 'tile')} compared with the cone, used for nothing else`,
     ),
     ...note(
       count(({ firing }) => firing === undefined),
@@ -52,7 +58,8 @@ function isOverruled({ drip, surfaceWritten }: Tile): boolean {
 }
 
 function dripNote(overruled: readonly Tile[]): string[] {
-  const named = overruled.slice(0, SHOWN_NAMES).map(({ tile, surfaceWritten }) => {
+  const inOrder = inNameOrder(overruled, ({ tile }) => tile);
+  const named = inOrder.slice(0, SHOWN_NAMES).map(({ tile, surfaceWritten }) => {
     return `${quoted(tile)} (${surfaceWritten || 'not judged'})`;
   });
   const left = overruled.length - named.length;
@@ -66,8 +73,11 @@ function dripNote(overruled: readonly Tile[]): string[] {
 function bodyNotes(tiles: readonly Tile[], bodies: Register<Body>): string[] {
   const isUnknown = (body: string) => !bodies.sound.has(body) && !bodies.faulty.has(body);
   const unknown = new Set(tiles.flatMap(({ body }) => body ?? []).filter(isUnknown));
-  return [...unknown].slice(0, SHOWN_NAMES).map((body) => {
-    const advice = bodies.advice(body);
-    return `body ${quoted(body)} of the tiles is not in ${bodies.file}${advice}`;
-  });
+  return [...unknown]
+    .sort(byName)
+    .slice(0, SHOWN_NAMES)
+    .map((body) => {
+      const advice = bodies.advice(body);
+      return `body ${quoted(body)} of the tiles is not in ${bodies.file}${advice}`;
+    });
 }

@@ -4,6 +4,7 @@ import type { Fault } from '../errors.ts';
 import type { Firing, Heat, Recipe, Tile, WitnessReading } from './archive.ts';
 import { glazeProblem, unityOfCells, type UnityRead } from './composition-cells.ts';
 import { quoted } from './found-text.ts';
+import { ownPeakC } from './own-peak.ts';
 import { lookUp, type Register } from './register.ts';
 import type { SheetRow } from './sheet.ts';
 import type { TileValues } from './tile-columns.ts';
@@ -49,7 +50,7 @@ export function tileOfRow(row: SheetRow<TileValues>, context: TileContext): Tile
   const maySkipHeat = verdict === 'unjudged' || !context.isWhole;
   const isHeatKnowable = !unread.has('cone') && !unread.has('firing') && firing.faults.length === 0;
   const heat = isHeatKnowable
-    ? heatOf(values, firing.firing, context, maySkipHeat)
+    ? heatOf(row, firing.firing, context, maySkipHeat)
     : { heat: undefined, faults: [] };
   const cellFaults = [
     ...('faults' in composition ? composition.faults : []),
@@ -146,12 +147,12 @@ function firingOf({ firing: name }: TileValues, { firings }: TileContext) {
 }
 
 function heatOf(
-  values: TileValues,
+  { values, other }: SheetRow<TileValues>,
   firing: Firing | undefined,
   { witness }: TileContext,
   maySkip: boolean,
 ): { heat: Heat | undefined; faults: CellFault[] } {
-  const read = tileHeat(values, firing, witness);
+  const read = tileHeat({ ...values, peakC: ownPeakC(other) }, firing, witness);
   if ('heat' in read) return { heat: read.heat, faults: [] };
   if (read.isMissing && maySkip) return { heat: undefined, faults: [] };
   return { heat: undefined, faults: [{ column: read.column, message: read.problem }] };

@@ -1,7 +1,7 @@
 import type { Fault } from '../errors.ts';
 import type { Tile } from './archive.ts';
-import { repeatedName } from './register.ts';
-import type { Sheet } from './sheet.ts';
+import { repeatedNames } from './repeated-names.ts';
+import type { Sheet, SheetRow } from './sheet.ts';
 import type { TileValues } from './tile-columns.ts';
 import { tileOfRow, type TileContext } from './tile-row.ts';
 
@@ -27,23 +27,33 @@ export function tileRows(
   const { file, has, rows, headFaults } = sheet;
   const loadAlone = loadsAlone(sheet, parts.firings?.sound.keys() ?? []);
   const context = { file, has, isWhole: headFaults.length === 0, loadAlone, ...parts };
-  const firstLine = new Map<string, number>();
+  const repeated = repeatedNames(
+    rows.map((row) => ({
+      name: row.values.tile,
+      line: row.line,
+      // Rows may differ in a column whose heading could not be read.
+      said: () => (context.isWhole ? saidBy(row) : undefined),
+    })),
+    file,
+    'tile',
+  );
   const tiles: Tile[] = [];
   const faults: Fault[] = [...headFaults];
   for (const row of rows) {
     const { tile, faults: ofRow } = tileOfRow(row, context);
-    const { tile: name } = row.values;
-    const first = name === undefined ? undefined : firstLine.get(name);
-    faults.push(...ofRow);
-    if (name !== undefined && first !== undefined) {
-      faults.push(repeatedName(file, row.line, 'tile', name, first));
-    } else {
-      if (name !== undefined) firstLine.set(name, row.line);
-      if (tile !== undefined) tiles.push(tile);
-    }
+    const ofName = repeated.get(row.line);
+    faults.push(...ofRow, ...(ofName === undefined ? [] : [ofName]));
+    // Of two rows of one name nobody can know which is right: neither is fitted.
+    if (tile !== undefined && ofName === undefined) tiles.push(tile);
   }
   const recipesUsed = new Set(rows.flatMap(({ values }) => values.recipe ?? []));
   return { tiles, faults, recipesUsed };
+}
+
+/** What a row says, cell by cell; of a cell that could not be read, what is wrong with it. */
+function saidBy({ values, faults, other }: SheetRow<TileValues>): string {
+  const wrong = faults.map(({ column, message }) => [column, message]);
+  return JSON.stringify([values, other, wrong]);
 }
 
 /** Names the load of a tile without a firing, so that no firing has the same name. */

@@ -66,7 +66,7 @@ export function witnessRows(
     const name = firing === undefined || shelf === undefined ? undefined : shelfKey(firing, shelf);
     return { name, label: shelf ?? '', line: row.line, value, faults };
   });
-  return collectByName(rows, sheet.file, 'shelf');
+  return collectByName(rows, sheet.file, 'shelf', sheet.headFaults.length === 0);
 }
 
 function firingFaults({ values }: SheetRow<WitnessValues>, firings: Register<Firing> | undefined) {

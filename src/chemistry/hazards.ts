@@ -15,18 +15,17 @@ export const GENERAL_CAUTIONS: readonly string[] = Object.freeze([
 
 /** Oxides of the metals that a glaze may give off to food and drink, and the metals' names. */
 const METALS = [
-  ['PbO', 'lead', 'Pb'],
-  ['BaO', 'barium', 'Ba'],
-  ['CuO', 'copper', 'Cu'],
-  ['MnO', 'manganese', 'Mn'],
-  ['Cr2O3', 'chromium', 'Cr'],
-  ['CoO', 'cobalt', 'Co'],
-  ['NiO', 'nickel', 'Ni'],
-  ['V2O5', 'vanadium', 'V'],
-  ['Li2O', 'lithium', 'Li'],
-] as const satisfies readonly (readonly [Oxide, string, string])[];
+  ['PbO', 'lead'],
+  ['BaO', 'barium'],
+  ['CuO', 'copper'],
+  ['MnO', 'manganese'],
+  ['Cr2O3', 'chromium'],
+  ['CoO', 'cobalt'],
+  ['NiO', 'nickel'],
+  ['V2O5', 'vanadium'],
+  ['Li2O', 'lithium'],
+] as const satisfies readonly (readonly [Oxide, string])[];
 
-const WIDEST_LINE = 78;
 const LEACH_TEST = 'Before use with food or drink, a licensed laboratory must leach-test the ware.';
 
 /**
@@ -36,7 +35,7 @@ const LEACH_TEST = 'Before use with food or drink, a licensed laboratory must le
  * note does not mean safe.
  *
  * @param unity - unity formula
- * @returns none, or two lines of at most 78 columns: the metals, and what to have done
+ * @returns none, or two sentences: the metals by name, and what to have done
  * @example
  * hazardNotes({ CaO: 0.7, PbO: 0.3, CuO: 0.05, SiO2: 3 })[0]; // 'Holds lead and copper.'
  * hazardNotes({ CaO: 1, Al2O3: 0.4, SiO2: 3 }); // []
@@ -44,9 +43,7 @@ const LEACH_TEST = 'Before use with food or drink, a licensed laboratory must le
 export function hazardNotes(unity: Unity): string[] {
   const held = METALS.filter(([oxide]) => (unity[oxide] ?? 0) > 0);
   if (held.length === 0) return [];
-  const named = `Holds ${listed(held.map(([, name]) => name))}.`;
-  const brief = `Holds ${listed(held.map(([, , symbol]) => symbol))}.`;
-  return [named.length <= WIDEST_LINE ? named : brief, LEACH_TEST];
+  return [`Holds ${listed(held.map(([, name]) => name))}.`, LEACH_TEST];
 }
 
 function listed(words: readonly string[]): string {

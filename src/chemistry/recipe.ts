@@ -38,6 +38,8 @@ export function recipeUnity(lines: readonly RecipePart[]): Unity {
   const most = Math.max(...lines.map(({ parts }) => parts));
   const totals = OXIDES.map((oxide) => {
     const moles = lines.map((line) => (line.parts / most) * (line.molesPer100g[oxide] ?? 0));
+    // Sorted, so that lines in another order give the same sum to the last bit.
+    moles.sort((a, b) => a - b);
     return [oxide, moles.reduce((sum, amount) => sum + amount, 0)] as const;
   });
   return toUnity(Object.fromEntries(totals.filter(([, amount]) => amount > 0)));

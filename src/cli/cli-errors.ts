@@ -5,7 +5,7 @@ export class UnreadableError extends StudioError {
   readonly exitCode = 3;
 }
 
-/** A file that cannot be written, or must not be. */
+/** A file that cannot be written: the disk is full, the folder absent or closed. */
 export class UnwritableError extends StudioError {
-  readonly exitCode = 2;
+  readonly exitCode = 3;
 }

@@ -1,6 +1,6 @@
 import { readFileSync } from 'node:fs';
 import { readdir, readFile, stat } from 'node:fs/promises';
-import { basename, join } from 'node:path';
+import { join } from 'node:path';
 import { styleText } from 'node:util';
 import { UnreadableError, UnwritableError } from './cli-errors.ts';
 import { STDIN, type Io, type PathKind } from './io.ts';
@@ -15,7 +15,7 @@ const USUAL_COLUMNS = 80;
 export function nodeIo(): Io {
   return {
     version: ownVersion(),
-    columns: process.stdout.columns || USUAL_COLUMNS,
+    columns: process.stdout.columns || columnsSet() || USUAL_COLUMNS,
     // styleText knows of NO_COLOR, of pipes and of terminals without codes.
     colour: styleText('bold', 'x', { stream: process.stdout }) !== 'x',
     readText: async (path) => new TextDecoder().decode(await readBytes(path)),
@@ -26,6 +26,12 @@ export function nodeIo(): Io {
     out: (text) => void process.stdout.write(text),
     err: (text) => void process.stderr.write(text),
   };
+}
+
+/** Without a terminal its width may be told by COLUMNS, as for other programs. */
+function columnsSet(): number {
+  const told = process.env['COLUMNS'] ?? '';
+  return /^\d{1,4}$/.test(told) ? Number(told) : 0;
 }
 
 function ownVersion(): string {
@@ -74,7 +80,7 @@ async function writeFileWhole(path: string, text: string): Promise<void> {
     await writeFileAtomic(path, text);
   } catch (error) {
     throw new UnwritableError(
-      `expected to write "${basename(path)}": ${reason(error)}`,
+      `expected to write "${path}": ${reason(error)}`,
       'Nothing was changed: a file that stood there is as it was.',
     );
   }
@@ -87,6 +93,7 @@ const REASONS: Readonly<Record<string, string>> = {
   EISDIR: 'that is a folder',
   ENOTDIR: 'a part of the path is no folder',
   ENOSPC: 'the disk is full',
+  EDQUOT: 'the disk is full',
   EROFS: 'the disk is read-only',
 };
 

@@ -1,9 +1,10 @@
 import { basename } from 'node:path';
 import type { Command } from 'commander';
-import { CompositionError, UsageError } from '../errors.ts';
+import { UsageError } from '../errors.ts';
 import type { Model, Point } from '../index.ts';
+import { asUsage } from './as-usage.ts';
 import { STDIN, type Io } from './io.ts';
-import { recipesAt, soundRecipe } from './recipe-input.ts';
+import { recipesAt, soundRecipes } from './recipe-input.ts';
 
 /** Ways to name the glazes that are asked about; they add up, in this order. */
 export interface PointOptions {
@@ -11,6 +12,13 @@ export interface PointOptions {
   readonly points?: string;
   readonly recipe?: readonly string[];
   readonly archive?: string;
+}
+
+/** The glazes that a command answers for. */
+export interface Asked {
+  readonly points: readonly Point[];
+  /** What is to be said about how they were given. */
+  readonly notes: readonly string[];
 }
 
 /**
@@ -33,32 +41,46 @@ export function withPointOptions(command: Command): Command {
  * @param options - as given
  * @param model - model that the command works on, and where it came from
  * @param io - where to read
- * @returns the points: of --glaze, then of --points, then of --recipe
- * @throws {UsageError} if two inputs claim standard input
- * @throws {CompositionError} or {ArchiveError} if a glaze cannot be read
+ * @returns the points of --glaze, then of --points, then of --recipe, and notes
+ * @throws {UsageError} if two inputs claim standard input, or a word names no glaze
+ * @throws {ArchiveError} if a file cannot be read
  */
 export async function pointsOf(
   options: PointOptions,
   { model, path }: { readonly model: Model; readonly path: string },
   io: Io,
-): Promise<Point[]> {
+): Promise<Asked> {
   const { glaze = [], points, recipe = [], archive } = options;
   if ([path, points, archive].filter((input) => input === STDIN).length > 1) {
     throw new UsageError('expected one input from standard input, got more than one -');
   }
-  const { glazePoint, readPoints } = await import('../index.ts');
-  const named = glaze.map((text, i) =>
-    glazePoint(text, glaze.length === 1 ? 'glaze' : `glaze ${i + 1}`),
-  );
-  const listed =
-    points === undefined
-      ? []
-      : readPoints(
-          points === STDIN ? 'standard input' : basename(points),
-          await io.readBytes(points),
-        );
+  const named = await glazes(glaze);
+  const listed = points === undefined ? NONE : await pointsIn(points, io);
   const recipes = recipe.length === 0 ? [] : await recipePoints(recipe, model, archive, io);
-  return [...named, ...listed, ...recipes];
+  return {
+    points: [...named.points, ...listed.points, ...recipes],
+    notes: [...named.notes, ...listed.notes],
+  };
+}
+
+const NONE: Asked = { points: [], notes: [] };
+
+async function glazes(texts: readonly string[]): Promise<Asked> {
+  const { readGlaze } = await import('../index.ts');
+  const read = asUsage(texts, (text, i) => {
+    const point = texts.length === 1 ? 'glaze' : `glaze ${i + 1}`;
+    return { point, ...readGlaze(text, point) };
+  });
+  return {
+    points: read.map(({ point, unity }) => ({ point, unity })),
+    notes: read.flatMap(({ notes }) => notes),
+  };
+}
+
+async function pointsIn(path: string, io: Io): Promise<Asked> {
+  const { readPoints } = await import('../index.ts');
+  const file = path === STDIN ? 'standard input' : basename(path);
+  return readPoints(file, await io.readBytes(path));
 }
 
 /**
@@ -67,14 +89,14 @@ export async function pointsOf(
  * @param options - as given
  * @param from - model that the command works on, and where it came from
  * @param io - where to read
- * @returns the points
+ * @returns the points and notes
  * @throws {UsageError} if no option names a glaze
  */
 export async function somePoints(
   options: PointOptions,
   from: { readonly model: Model; readonly path: string },
   io: Io,
-): Promise<Point[]> {
+): Promise<Asked> {
   const { glaze, points, recipe } = options;
   if (glaze === undefined && points === undefined && recipe === undefined) {
     throw new UsageError(
@@ -93,12 +115,12 @@ async function recipePoints(
 ): Promise<Point[]> {
   const held = model.archive.recipes;
   if (archive === undefined && held.length === 0) {
-    throw new CompositionError(
+    throw new UsageError(
       `expected recipes in the model, found none (asked for ${names.join(', ')})`,
       'Name the archive that holds them by --archive, or give the glaze by --glaze.',
     );
   }
   const found = archive === undefined ? { recipes: [], faults: [] } : await recipesAt(archive, io);
   const recipes = [...found.recipes, ...held];
-  return Promise.all(names.map((name) => soundRecipe({ recipes, faults: found.faults }, name)));
+  return soundRecipes({ recipes, faults: found.faults }, names);
 }

@@ -1,6 +1,7 @@
 import { ArchiveError, type Fault } from '../errors.ts';
 import type { Point, Recipe } from '../index.ts';
 import { archiveFilesAt } from './archive-input.ts';
+import { asUsage } from './as-usage.ts';
 import type { Io } from './io.ts';
 
 /** Files that recipes are computed from. */
@@ -35,24 +36,25 @@ export async function recipesAt(path: string, io: Io): Promise<RecipesFound> {
 }
 
 /**
- * One recipe of those found.
+ * Some recipes of those found.
  *
  * @param found - recipes; of two of one name the first counts
- * @param name - of the recipe
- * @returns its composition
- * @throws {ArchiveError} with the faults of the recipe files, if it is not among the sound ones
- * @throws {CompositionError} if the files have no faults and no such recipe
+ * @param names - of the recipes, as the command line gives them
+ * @returns their compositions, in the order of the names
+ * @throws {ArchiveError} with the faults of the recipe files, if one is not among the sound ones
+ * @throws {UsageError} with every name that is unknown, if the files have no faults
  */
-export async function soundRecipe(
+export async function soundRecipes(
   { recipes, faults }: Pick<RecipesFound, 'recipes' | 'faults'>,
-  name: string,
-): Promise<Point> {
+  names: readonly string[],
+): Promise<Point[]> {
   const { recipePoint } = await import('../index.ts');
-  if (faults.length > 0 && !recipes.some(({ recipe }) => recipe === name)) {
+  const unsound = names.find((name) => !recipes.some(({ recipe }) => recipe === name));
+  if (faults.length > 0 && unsound !== undefined) {
     throw new ArchiveError(
       faults,
-      `Mend the files: "${name}" is not among the recipes without faults.`,
+      `Mend the files: "${unsound}" is not among the recipes without faults.`,
     );
   }
-  return recipePoint({ recipes }, name);
+  return asUsage(names, (name) => recipePoint({ recipes }, name));
 }

@@ -13,21 +13,43 @@ const BUG = 1;
  */
 export async function reportError(error: unknown, io: Io): Promise<number> {
   if (error instanceof StudioError) {
-    const { wrapped } = await import('../index.ts');
     const hint = error.hint === undefined ? '' : `\n${error.hint}`;
-    const lines = safeLines(`coneshift: ${error.message}${hint}`).split('\n');
-    for (const line of lines) {
-      const first = /^ */.exec(line)?.[0] ?? '';
-      io.err(`${wrapped(line, { columns: io.columns, first, next: `${first}  ` })}\n`);
-    }
+    await tell(`coneshift: ${error.message}${hint}`, io);
     return error.exitCode;
   }
   const told = error instanceof Error ? (error.stack ?? error.message) : String(error);
-  io.err(
-    `coneshift: this is a bug in coneshift, not a fault of yours. Please report it, with the\n`,
+  await tell(
+    'coneshift: this is a bug in coneshift, not a fault of yours. Please report it, with the ' +
+      `version (${io.version}), the command and these lines:`,
+    io,
   );
-  io.err(`version (${io.version}), the command and these lines:\n${safeLines(told)}\n`);
+  // A stack is for who mends it: its lines stay as they are.
+  io.err(`${safeLines(told)}\n`);
   return BUG;
+}
+
+/**
+ * Tells something on the stream for messages, in lines that fit the terminal.
+ *
+ * @param text - one or more lines; what is set in stays so
+ * @param io - where to tell it
+ */
+export async function tell(text: string, io: Pick<Io, 'columns' | 'err'>): Promise<void> {
+  const { wrapped } = await import('../index.ts');
+  for (const line of safeLines(text).split('\n')) {
+    const first = /^ */.exec(line)?.[0] ?? '';
+    io.err(`${wrapped(line, { columns: io.columns, first, next: `${first}  ` })}\n`);
+  }
+}
+
+/**
+ * Tells notes on the input, each once.
+ *
+ * @param notes - the notes
+ * @param io - where to tell them
+ */
+export async function tellNotes(notes: readonly string[], io: Io): Promise<void> {
+  for (const note of notes) await tell(`coneshift: note: ${note}`, io);
 }
 
 /**

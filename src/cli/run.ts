@@ -6,18 +6,20 @@ import { predictCommand } from './commands/predict.ts';
 import { shiftCommand } from './commands/shift.ts';
 import { unityCommand } from './commands/unity.ts';
 import type { Io } from './io.ts';
-import { reportError, safeLines } from './report-error.ts';
+import { helpText, LEAST_HELP_COLUMNS } from './help-text.ts';
+import { reportError, safeLines, tell } from './report-error.ts';
+import { swallowedModel } from './swallowed-model.ts';
 
 /** Exit code of a call that cannot be understood. */
 const USAGE = 2;
-const LEAST_HELP_COLUMNS = 40;
 
 /**
  * Runs the command line.
  *
  * @param argv - arguments after the program's name
  * @param io - what it may touch
- * @returns exit code: 0 done, 1 a bug, 2 usage, 3 unreadable input, 4 cannot be fitted or solved
+ * @returns exit code: 0 done, 1 a bug, 2 usage, 3 a file that cannot be read or written,
+ *   4 cannot be fitted or solved
  */
 export async function run(argv: readonly string[], io: Io): Promise<number> {
   try {
@@ -25,7 +27,12 @@ export async function run(argv: readonly string[], io: Io): Promise<number> {
     return 0;
   } catch (error) {
     // Commander has said by now what it did not understand, or has shown the help asked for.
-    if (error instanceof CommanderError) return error.exitCode === 0 ? 0 : USAGE;
+    if (error instanceof CommanderError) {
+      const isMissing = error.code === 'commander.missingArgument';
+      const hint = isMissing ? swallowedModel(argv) : undefined;
+      if (hint !== undefined) await tell(hint, io);
+      return error.exitCode === 0 ? 0 : USAGE;
+    }
     return await reportError(error, io);
   }
 }
@@ -36,8 +43,12 @@ cone, and says how a glaze shifts between cones, and how surely.`;
 const EXAMPLE = `
 ARCHIVE is a folder of CSV files (tiles.csv and what is beside it), one CSV
 file, or - for one CSV on standard input. MODEL is a file written by fit, or -
-for standard input. Exit codes: 0 done, 1 a bug, 2 usage, 3 unreadable input,
-4 cannot be fitted or solved.
+for standard input.
+
+Exit codes: 0 done; 1 a bug; 2 usage: a word of the command line cannot be
+meant (an option, a cone, a glaze, the name of a recipe, a file that must not
+be written over); 3 a file or folder that cannot be read or written, or has
+faults; 4 cannot be fitted or solved.
 
 Example:
   coneshift check my-tiles/
@@ -50,8 +61,8 @@ function program(io: Io): Command {
     .version(io.version, '-V, --version', 'show the version')
     .helpOption('-h, --help', 'show this help')
     .helpCommand('help [command]', 'show the help of a command')
-    .addHelpText('after', EXAMPLE)
-    .configureHelp({ subcommandTerm: (command) => command.name() })
+    .addHelpText('after', () => helpText(EXAMPLE, io.columns))
+    .configureHelp({ subcommandTerm: (command) => command.name(), minWidthToWrap: 20 })
     .exitOverride()
     .showHelpAfterError('Add --help to see what it takes.')
     .configureOutput({

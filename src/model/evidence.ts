@@ -1,136 +1,191 @@
-import { lowerIndex } from '../numeric/linalg.ts';
-import { logisticPosterior, type LogisticPosterior, type LogOddsWeights } from './logistic.ts';
-import { groupColumns, type GroupPrior, type StagePrior } from './priors.ts';
-import type { LogisticData, LogisticPrior } from './whitened.ts';
+import { sigmoid } from '../numeric/logistic.ts';
+import { stageCovariances, withScalesSpread } from './covariance.ts';
+import { problemAt, STAGE_PRIOR, type Design } from './design.ts';
+import { rowLogOdds, type LatentProblem, type Unknowns } from './latent.ts';
+import { laplaceEvidence } from './logistic.ts';
+import {
+  backtracked,
+  maximum,
+  newtonStep,
+  posteriorSpread,
+  rowSds,
+  type NewtonStep,
+} from './newton.ts';
+import { LOAD_PRIOR, WRONG_VERDICTS } from './priors.ts';
+import {
+  fixedPointSd,
+  groupDepartures,
+  largestMove,
+  startingScales,
+  type Scales,
+  type StageScales,
+} from './scales.ts';
+import { largestDifference, loadsAt, loadSd, unknownsAt, weightsAt } from './units.ts';
 
-/** Prior sds of one stage: per group, and of the loads' intercepts. */
-export interface StageSds {
-  readonly groups: readonly number[];
-  readonly load: number;
-}
-
-/** A stage at its re-estimated sds. */
+/** Both stages at their scales. */
 export interface EvidenceFit {
-  readonly posterior: LogisticPosterior;
-  readonly sds: StageSds;
-  /** Rounds of re-estimation; 0 where the sds were held. */
+  readonly scales: Scales;
+  /** Per stage: posterior mean of the weights, log-odds per unit of the column. */
+  readonly weights: readonly Float64Array[];
+  /** Per stage: covariance of the weights, lower triangle; that of the scales is in it. */
+  readonly covariances: readonly Float64Array[];
+  /** [loads][2]: heat less the cone on paper, in cones, and the load's intercept of gloss. */
+  readonly loads: Float64Array;
+  /** [loads][2]: variance of each. */
+  readonly loadVariance: Float64Array;
+  /** Laplace estimate of the log evidence at the scales. */
+  readonly logEvidence: number;
+  /** Rounds of re-estimation. */
   readonly rounds: number;
+  /** Largest entry of the gradient at the answer, in units of the prior. */
+  readonly gradientNorm: number;
 }
 
-/** Where a re-estimation begins, to save time; it does not change where it ends. */
+/** Where a re-estimation begins, to save time. */
 export interface EvidenceStart {
-  readonly sds: StageSds;
-  readonly at?: LogOddsWeights;
+  readonly scales: Scales;
+  readonly weights?: readonly Float64Array[];
 }
 
-/** What each starting sd weighs against the tiles: as many weights seen at exactly that size. */
-const PSEUDO_OBSERVATIONS = 4;
-/** Largest change of a log variance in the last round. */
-const CONVERGED_LOG_VARIANCE = 1e-6;
-const MOST_ROUNDS = 1000;
+/** Largest relative move of a variance, or move of a weight, in the last round. */
+const CONVERGED_MOVE = 0.01;
+const MOST_ROUNDS = 200;
+/** Decrement at which the last maximum is near enough: a thousandth of a prior sd in no weight. */
+const LAST_DECREMENT = 1e-7;
 
 /**
- * Re-estimates the prior sds of a stage from its tiles, and fits the stage with them.
+ * Fits both stages, and re-estimates from the tiles the prior sds, the spread of the loads and the share
+ * of wrong verdicts, each with its starting value as a few pseudo-observations. Without tiles they stay.
  *
- * Each group's variance is moved to its fixed point (pseudo-observations and squared departures from
- * the prior means, over pseudo-observations and well-determined weights). That is nearly a stationary
- * point of the Laplace evidence times a scaled inverse chi-squared prior, per log variance; the shift of
- * the mode with the sds is left out, as in the source. Without tiles the sds stay.
+ * At the end the mode is replaced by the centre of the Gaussian that is nearest to the posterior: each
+ * verdict's likelihood is averaged over the spread of its log-odds. The spread of the sds themselves is
+ * added to the covariance.
  *
- * @param data - rows in the order of `priorColumns`, outcomes, loads
- * @param prior - groups with their means and starting sds
- * @param start - sds and weights to begin with
- * @returns posterior, sds and rounds
+ * @param design - both stages
+ * @param start - scales and weights to begin with
+ * @param isHeld - whether the scales stay as they are
+ * @returns scales, weights, covariance, loads
  *
- * Source: D. J. C. MacKay, Bayesian interpolation, Neural Computation 4 (1992) 415-447, eq. 4.8.
+ * Sources: fixed point of the sds: D. J. C. MacKay, Neural Computation 4 (1992) 415-447. Averaged
+ * likelihood: M. Opper and C. Archambeau, The variational Gaussian approximation revisited, Neural
+ * Computation 21 (2009) 786-792. Spread of the sds: R. E. Kass and D. Steffey, Journal of the American
+ * Statistical Association 84 (1989) 717-726.
  */
 export function evidenceFit(
-  data: LogisticData,
-  prior: StagePrior,
-  start: EvidenceStart = { sds: startingSds(prior) },
+  design: Design,
+  start: EvidenceStart = { scales: startingScales(STAGE_PRIOR) },
+  isHeld = false,
 ): EvidenceFit {
-  let { sds } = start;
-  let posterior = logisticPosterior(data, logisticPrior(prior, sds), start.at);
-  for (let round = 1; round <= MOST_ROUNDS; round++) {
-    const next = reEstimated(prior, sds, posterior);
-    const change = largestLogVarianceChange(sds, next);
-    sds = next;
-    const at = { weights: posterior.mean, loads: posterior.loadMean };
-    posterior = logisticPosterior(data, logisticPrior(prior, sds), at);
-    if (change < CONVERGED_LOG_VARIANCE) return { posterior, sds, rounds: round };
+  let { scales } = start;
+  let weights = start.weights ?? design.stages.map((s) => Float64Array.from(s.priorMean));
+  let loads = new Float64Array(2 * design.loadCount);
+  let rounds = 0;
+  for (let move = Infinity; rounds < MOST_ROUNDS && move > CONVERGED_MOVE; rounds++) {
+    const problem = problemAt(design, scales, weights);
+    const from = unknownsAt(design, scales, weights, loads);
+    const step = newtonStep(problem, from);
+    const unknowns = backtracked(problem, from, step) ?? from;
+    const next = isHeld ? scales : reEstimated(design, problem, scales, unknowns, step);
+    const reached = weightsAt(design, scales, unknowns.theta);
+    move = Math.max(isHeld ? 0 : largestMove(scales, next), largestDifference(weights, reached));
+    weights = reached;
+    loads = loadsAt(scales, unknowns.loads);
+    scales = next;
   }
-  return { posterior, sds, rounds: MOST_ROUNDS };
+  return averagedFit(design, { scales, weights }, loads, rounds, isHeld);
 }
 
-/**
- * Fits a stage with its prior sds held.
- *
- * @param data - rows in the order of `priorColumns`, outcomes, loads
- * @param prior - groups with their means
- * @param sds - the sds to hold
- * @returns posterior and the same sds
- */
-export function heldFit(data: LogisticData, prior: StagePrior, sds: StageSds): EvidenceFit {
-  return { posterior: logisticPosterior(data, logisticPrior(prior, sds)), sds, rounds: 0 };
-}
-
-/**
- * The sds of a prior before any tile.
- *
- * @param prior - groups with their starting sds
- * @returns sds per group and of the loads
- * @example
- * startingSds(GLOSS_PRIOR).groups; // [2, 1.5, 0.6, 0.42, 0.3]
- */
-export function startingSds(prior: StagePrior): StageSds {
-  return { groups: prior.groups.map((group) => group.startSd), load: prior.startLoadSd };
-}
-
-function logisticPrior({ groups }: StagePrior, sds: StageSds): LogisticPrior {
+function averagedFit(
+  design: Design,
+  { scales, weights }: Required<EvidenceStart>,
+  loads: Float64Array,
+  rounds: number,
+  isHeld: boolean,
+): EvidenceFit {
+  const problem = problemAt(design, scales, weights);
+  const mode = maximum(problem, unknownsAt(design, scales, weights, loads), LAST_DECREMENT);
+  const sds = rowSds(problem, mode.step);
+  const centre = maximum(problem, { ...mode.unknowns, sds }, LAST_DECREMENT);
+  const { covariance, loadVariance } = posteriorSpread(centre.step);
+  const { theta } = centre.unknowns;
+  const widened = isHeld ? covariance : withScalesSpread(design, theta, covariance);
   return {
-    mean: groups.flatMap((group) => Object.values(group.means)),
-    sd: groups.flatMap((group, g) => groupColumns(group).map(() => sds.groups[g]!)),
-    loadSd: sds.load,
+    scales,
+    weights: weightsAt(design, scales, theta),
+    covariances: stageCovariances(design, scales, widened),
+    loads: loadsAt(scales, centre.unknowns.loads),
+    loadVariance: loadVariance.map((v, k) => v * loadSd(scales, k) ** 2),
+    logEvidence: laplaceEvidence(mode.step),
+    rounds,
+    gradientNorm: centre.step.gradientNorm,
   };
 }
 
-function reEstimated(prior: StagePrior, sds: StageSds, posterior: LogisticPosterior): StageSds {
-  let column = 0;
-  const groups = prior.groups.map((group, g) => {
-    const departures = Object.values(group.means).map((mean) => {
-      const at = column++;
-      return {
-        square: (posterior.mean[at]! - mean) ** 2,
-        variance: posterior.covarianceLower[lowerIndex(at, at)]!,
-      };
-    });
-    return fixedPointSd(group, sds.groups[g]!, departures);
-  });
-  const loads = posterior.loadMean.map((mean, l) => ({
-    square: mean ** 2,
-    variance: posterior.loadVariance[l]!,
-  }));
-  return { groups, load: fixedPointSd({ startSd: prior.startLoadSd }, sds.load, loads) };
+function reEstimated(
+  design: Design,
+  problem: LatentProblem,
+  scales: Scales,
+  unknowns: Unknowns,
+  step: NewtonStep,
+): Scales {
+  const { covariance, loadVariance } = posteriorSpread(step);
+  let first = 0;
+  const [melt, gloss] = design.stages.map((stage, s): StageScales => {
+    const own = scales[stage.name];
+    const prior = STAGE_PRIOR[stage.name];
+    const departures = groupDepartures(stage, unknowns.theta, covariance, first);
+    const none = { square: 0, determined: 0 };
+    const base = first;
+    first += stage.size;
+    return {
+      groups: own.groups.map((sd, g) =>
+        fixedPointSd(prior.groups[g]!.startSd, sd, departures[g] ?? none),
+      ),
+      residual: fixedPointSd(
+        prior.startResidualSd,
+        own.residual,
+        departures[own.groups.length] ?? none,
+      ),
+      flipped: shareFlipped(problem.blocks[s]!, base, unknowns, own.flipped),
+    };
+  }) as [StageScales, StageScales];
+  const ofLoads = (k: 0 | 1) => {
+    const departures = { square: 0, determined: 0 };
+    for (let at = k; at < loadVariance.length; at += 2) {
+      departures.square += unknowns.loads[at]! ** 2;
+      departures.determined += 1 - loadVariance[at]!;
+    }
+    return departures;
+  };
+  const { offsetCones, gloss: glossSd } = scales.loads;
+  return {
+    melt,
+    gloss,
+    loads: {
+      offsetCones: fixedPointSd(LOAD_PRIOR.startOffsetCones, offsetCones, ofLoads(0)),
+      gloss: fixedPointSd(LOAD_PRIOR.startGlossSd, glossSd, ofLoads(1)),
+    },
+  };
 }
 
-function fixedPointSd(
-  { startSd }: Pick<GroupPrior, 'startSd'>,
-  sd: number,
-  departures: readonly { readonly square: number; readonly variance: number }[],
+/** Mean probability that a verdict is the wrong way round, given the log-odds at the maximum. */
+function shareFlipped(
+  block: LatentProblem['blocks'][number],
+  first: number,
+  unknowns: Unknowns,
+  flipped: number,
 ): number {
-  let squares = PSEUDO_OBSERVATIONS * startSd ** 2;
-  let determined = PSEUDO_OBSERVATIONS;
-  for (const { square, variance } of departures) {
-    squares += square;
-    determined += 1 - variance / sd ** 2;
+  const { startShare, pseudoTiles } = WRONG_VERDICTS;
+  let sum = startShare * pseudoTiles;
+  let tiles = pseudoTiles;
+  for (let i = 0; i < block.count; i++) {
+    const yes = sigmoid(rowLogOdds(block, first, unknowns, i));
+    const outcome = block.outcome[i]!;
+    const weight = block.weight[i]!;
+    const ifYes = (flipped * (1 - yes)) / (flipped + (1 - 2 * flipped) * yes);
+    const ifNo = (flipped * yes) / (flipped + (1 - 2 * flipped) * (1 - yes));
+    sum += weight * (outcome * ifYes + (1 - outcome) * ifNo);
+    tiles += weight;
   }
-  return Math.sqrt(squares / determined);
-}
-
-function largestLogVarianceChange(before: StageSds, after: StageSds): number {
-  const pairs = [
-    ...before.groups.map((sd, g) => [sd, after.groups[g]!]),
-    [before.load, after.load],
-  ];
-  return Math.max(...pairs.map(([a = 1, b = 1]) => 2 * Math.abs(Math.log(b / a))));
+  return sum / tiles;
 }

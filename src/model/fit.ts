@@ -1,7 +1,7 @@
 import type { Archive } from '../archive/archive.ts';
 import { coneText } from '../firing/cone.ts';
 import type { Model, Validation } from './model.ts';
-import { fitStages, isJudged, stageOf, type JudgedTile, type StageFits } from './stages.ts';
+import { fitStages, fittedStages, isJudged, type JudgedTile, type StagesFit } from './stages.ts';
 import { validation } from './validation.ts';
 
 export interface FitOptions {
@@ -11,6 +11,8 @@ export interface FitOptions {
 
 /** Fewer tiles than this on one side of a boundary leave it mostly to the prior. */
 const FEW_TILES = 10;
+const NOTHING_LEARNT =
+  'no judged tile: every answer is what is usual elsewhere, and nothing in it comes from this studio';
 /** Cones that the tool is asked about first. */
 const MAIN_CONES = [5, 6, 7];
 
@@ -26,10 +28,10 @@ const MAIN_CONES = [5, 6, 7];
  */
 export function fitModel(archive: Archive, options: FitOptions = {}): Model {
   const tiles = archive.tiles.filter(isJudged);
-  const fits = fitStages(tiles);
-  const account = validation(tiles, fits);
+  const fit = fitStages(tiles);
+  const account = validation(tiles, fit);
   return {
-    ...modelOf(archive, fits, options),
+    ...modelOf(archive, fit, options),
     validation: account,
     notes: fitNotes(tiles, account),
   };
@@ -51,7 +53,7 @@ export function fitUnvalidated(archive: Archive, options: FitOptions = {}): Unva
 
 function modelOf(
   archive: Archive,
-  fits: StageFits,
+  fit: StagesFit,
   { madeBy = 'coneshift' }: FitOptions,
 ): UnvalidatedModel {
   const loads = archive.tiles.flatMap(({ firing, load }) => (firing === undefined ? [] : [load]));
@@ -60,12 +62,12 @@ function modelOf(
     schema: 'coneshift.model/1',
     madeBy,
     archive,
-    melt: stageOf('melt', fits.melt, named),
-    gloss: stageOf('gloss', fits.gloss, named),
+    ...fittedStages(fit, named),
   };
 }
 
 function fitNotes(tiles: readonly JudgedTile[], { byCone, notes }: Validation): string[] {
+  if (tiles.length === 0) return [NOTHING_LEARNT];
   const count = (...wanted: JudgedTile['verdict'][]) =>
     tiles.filter(({ verdict }) => wanted.includes(verdict)).length;
   const sides = [
@@ -88,7 +90,7 @@ function fitNotes(tiles: readonly JudgedTile[], { byCone, notes }: Validation): 
     (cone) =>
       `no judged tile at cone ${coneText(cone)}: answers there are carried over from other cones`,
   );
-  const oneCone = byCone.folds === 0 && tiles.length > 0;
+  const oneCone = byCone.folds === 0;
   return [
     ...few,
     ...unseen,

@@ -67,6 +67,12 @@ function scaled(input: keyof Inputs, value: number): number {
 }
 
 /**
+ * Heat in squares and products levels off at so many cones from the centre: a bend that is seen between
+ * cones 5 and 7 must not turn the answer round at cone 12 (chosen on invented studios).
+ */
+const HEAT_LEVELS_OFF = 3;
+
+/**
  * One row of a design matrix.
  *
  * @param inputs - scaled inputs
@@ -74,19 +80,66 @@ function scaled(input: keyof Inputs, value: number): number {
  * @returns the value of each column
  * @throws {RangeError} if a column names no input
  * @example
- * columnValues(scaledInputs({ SiO2: 5.2, Al2O3: 0.42, CaO: 1 }, 8), ['1', 'SiO2^2', 'SiO2*heat']);
- * // [1, 4, 4]
+ * columnValues(scaledInputs({ SiO2: 5.2, Al2O3: 0.42, CaO: 1 }, 8), ['1', 'SiO2^2', 'heat']);
+ * // [1, 4, 2]
  */
 export function columnValues(inputs: Inputs, columns: readonly string[]): number[] {
   return columns.map((column) => columnValue(inputs, column));
 }
 
+/**
+ * How fast each column of a row grows with heat.
+ *
+ * @param inputs - scaled inputs
+ * @param columns - as for `columnValues`
+ * @returns per column, per cone
+ * @example
+ * heatSlopes(scaledInputs({ SiO2: 4.2, Al2O3: 0.42, CaO: 1 }, 6), ['1', 'heat', 'SiO2*heat']);
+ * // [0, 1, 1]
+ */
+export function heatSlopes(inputs: Inputs, columns: readonly string[]): number[] {
+  const bend = (1 + (inputs.heat / HEAT_LEVELS_OFF) ** 2) ** -1.5;
+  return columns.map((column) => {
+    const factors = factorsOf(column);
+    if (factors.length === 1) return factors[0] === 'heat' ? 1 : 0;
+    return factors.reduce(
+      (sum, factor, i) =>
+        factor === 'heat' ? sum + bend * factorInProduct(inputs, factors[1 - i]!) : sum,
+      0,
+    );
+  });
+}
+
 function columnValue(inputs: Inputs, column: string): number {
-  if (column === '1') return 1;
-  const square = column.endsWith('^2');
-  const factors = square ? [column.slice(0, -2), column.slice(0, -2)] : column.split('*');
-  return factors.reduce((product, factor) => {
-    if (!Object.hasOwn(SCALE, factor)) throw new RangeError(`column ${column} names no input`);
-    return product * inputs[factor as keyof Inputs];
-  }, 1);
+  const [first, second] = factorsOf(column);
+  if (first === undefined) return 1;
+  if (second === undefined) return inputs[first];
+  return factorInProduct(inputs, first) * factorInProduct(inputs, second);
+}
+
+function factorInProduct(inputs: Inputs, factor: keyof Inputs): number {
+  const value = inputs[factor];
+  return factor === 'heat' ? value / Math.sqrt(1 + (value / HEAT_LEVELS_OFF) ** 2) : value;
+}
+
+/** Columns are few and asked for at every point: each is taken apart once. */
+const FACTORS = new Map<string, readonly (keyof Inputs)[]>();
+
+/** `SiO2*heat` -> SiO2, heat; `SiO2^2` -> SiO2, SiO2; `1` -> none. */
+function factorsOf(column: string): readonly (keyof Inputs)[] {
+  const known = FACTORS.get(column);
+  if (known) return known;
+  const factors = takenApart(column);
+  FACTORS.set(column, factors);
+  return factors;
+}
+
+function takenApart(column: string): readonly (keyof Inputs)[] {
+  if (column === '1') return [];
+  const isSquare = column.endsWith('^2');
+  const names = isSquare ? [column.slice(0, -2), column.slice(0, -2)] : column.split('*');
+  return names.map((name) => {
+    if (!Object.hasOwn(SCALE, name)) throw new RangeError(`column ${column} names no input`);
+    return name as keyof Inputs;
+  });
 }

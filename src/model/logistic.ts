@@ -1,24 +1,28 @@
-import {
-  choleskyFactor,
-  choleskyInverse,
-  choleskyLogDeterminant,
-  choleskySolve,
-  dot,
-  lowerIndex,
-  quadraticForm,
-} from '../numeric/linalg.ts';
-import {
-  addOuterProduct,
-  newtonSystem,
-  whiteLogDensity,
-  whitened,
-  type LogisticData,
-  type LogisticPrior,
-  type NewtonSystem,
-  type Whitened,
-} from './whitened.ts';
+import { choleskyLogDeterminant, dot, lowerIndex } from '../numeric/linalg.ts';
+import type { LatentProblem, Unknowns } from './latent.ts';
+import { maximum, posteriorSpread, type NewtonStep } from './newton.ts';
 
-export type { LogisticData, LogisticPrior } from './whitened.ts';
+/** Observations of a yes-or-no outcome. */
+export interface LogisticData {
+  /** Shape [tiles][columns]; an intercept is a column of ones. */
+  readonly rows: readonly (readonly number[])[];
+  /** 1 yes, 0 no; a fraction is the share of yes among `weight` trials. */
+  readonly outcome: readonly number[];
+  /** How often each row counts; 1 where absent. */
+  readonly weight?: readonly number[];
+  /** Load of each tile, numbered from 0; each load has an intercept of its own. */
+  readonly load?: readonly number[];
+}
+
+/** Independent Gaussian priors of the weights, and of the loads' intercepts about 0. */
+export interface LogisticPrior {
+  /** Per column. */
+  readonly mean: readonly number[];
+  /** Per column, > 0. */
+  readonly sd: readonly number[];
+  /** Sd of the loads' intercepts, > 0; needed where loads are given. */
+  readonly loadSd?: number;
+}
 
 /** Laplace approximation: the Gaussian at the mode with the curvature there. */
 export interface LogisticPosterior {
@@ -42,11 +46,12 @@ export interface LogOddsWeights {
   readonly loads: readonly number[];
 }
 
+/** A strictly concave function: at this decrement the mode is exact to rounding. */
+const CONVERGED_DECREMENT = 1e-20;
+
 /**
- * Posterior of the weights of a logistic regression with Gaussian priors and load intercepts.
- *
- * Newton's method with backtracking on a strictly concave function: it converges for separated
- * classes, for one class, for no rows (the answer is then the prior).
+ * Posterior of the weights of one logistic regression with Gaussian priors and load intercepts: the
+ * engine of the fit on its plainest problem, as other programs pose it.
  *
  * @param data - rows, outcomes, weights, loads
  * @param prior - means and sds
@@ -64,136 +69,117 @@ export function logisticPosterior(
   prior: LogisticPrior,
   start?: LogOddsWeights,
 ): LogisticPosterior {
-  const problem = whitened(data, prior);
-  let point = startPoint(problem, prior, start);
-  let step = stepAt(problem, point);
-  let iterations = 0;
-  for (; iterations < MOST_ITERATIONS && step.decrement > CONVERGED_DECREMENT; iterations++) {
-    const next = backtracked(problem, point, step);
-    if (next === undefined) break;
-    point = next;
-    step = stepAt(problem, point);
-  }
-  return posteriorAt(problem, prior, point, step, iterations);
-}
-
-/** A strictly concave function in few dimensions: 10 to 20 steps are usual. */
-const MOST_ITERATIONS = 200;
-/** Half of it bounds the log density still to be gained. */
-const CONVERGED_DECREMENT = 1e-20;
-
-interface WhitePoint {
-  readonly theta: Float64Array;
-  readonly loads: Float64Array;
-  readonly logDensity: number;
-}
-
-interface NewtonStep {
-  readonly theta: Float64Array;
-  readonly loads: Float64Array;
-  /** Gradient times step. */
-  readonly decrement: number;
-  readonly gradientNorm: number;
-  readonly factor: Float64Array;
-  readonly loadPrecision: Float64Array;
-  readonly coupling: Float64Array;
-}
-
-function startPoint(problem: Whitened, prior: LogisticPrior, start?: LogOddsWeights): WhitePoint {
-  const { size, loadCount, loadSd } = problem;
-  const theta = Float64Array.from({ length: size }, (_, j) =>
-    start ? (start.weights[j]! - prior.mean[j]!) / prior.sd[j]! : 0,
+  checkShapes(data, prior);
+  const problem = logisticProblem(data, prior);
+  const { unknowns, step, iterations } = maximum(
+    problem,
+    startingPoint(problem, prior, start),
+    CONVERGED_DECREMENT,
   );
-  const loads = Float64Array.from({ length: loadCount }, (_, l) =>
-    start ? start.loads[l]! / loadSd : 0,
-  );
-  return { theta, loads, logDensity: whiteLogDensity(problem, theta, loads) };
-}
-
-function stepAt(problem: Whitened, { theta, loads }: WhitePoint): NewtonStep {
-  return solveStep(newtonSystem(problem, theta, loads));
-}
-
-/** Eliminates the loads, whose block is diagonal, solves for the weights, and puts the loads back. */
-function solveStep(system: NewtonSystem): NewtonStep {
-  const { size, loadCount, gradient, loadGradient, precision, loadPrecision, coupling } = system;
-  const reduced = Float64Array.from(precision);
-  const right = Float64Array.from(gradient);
-  for (let l = 0; l < loadCount; l++) {
-    const scale = 1 / loadPrecision[l]!;
-    const base = l * size;
-    addOuterProduct(reduced, right, coupling, base, size, -scale, -loadGradient[l]! * scale);
-  }
-  const factor = choleskyFactor(reduced, size);
-  const theta = choleskySolve(factor, right);
-  const loads = Float64Array.from(loadPrecision, (d, l) => {
-    const row = coupling.subarray(l * size, (l + 1) * size);
-    return (loadGradient[l]! - dot(row, theta)) / d;
+  const { covariance, loadVariance } = posteriorSpread(step);
+  prior.sd.forEach((sd, i) => {
+    for (let j = 0; j <= i; j++) covariance[lowerIndex(i, j)]! *= sd * prior.sd[j]!;
   });
+  const ofLoads = (values: Float64Array) =>
+    data.load === undefined ? [] : Array.from(values).filter((_, k) => k % 2 === 0);
+  const loadSd = prior.loadSd ?? 0;
   return {
-    theta,
-    loads,
-    decrement: dot(gradient, theta) + dot(loadGradient, loads),
-    gradientNorm: [...gradient, ...loadGradient].reduce(
-      (most, g) => Math.max(most, Math.abs(g)),
-      0,
-    ),
-    factor,
-    loadPrecision,
-    coupling,
-  };
-}
-
-/** Armijo's rule; undefined once rounding hides any further gain. */
-function backtracked(
-  problem: Whitened,
-  from: WhitePoint,
-  step: NewtonStep,
-): WhitePoint | undefined {
-  if (step.decrement < 1e-8) {
-    const theta = from.theta.map((t, j) => t + step.theta[j]!);
-    const loads = from.loads.map((v, l) => v + step.loads[l]!);
-    return { theta, loads, logDensity: whiteLogDensity(problem, theta, loads) };
-  }
-  for (let share = 1; share > 1e-12; share /= 2) {
-    const theta = from.theta.map((t, j) => t + share * step.theta[j]!);
-    const loads = from.loads.map((v, l) => v + share * step.loads[l]!);
-    const logDensity = whiteLogDensity(problem, theta, loads);
-    if (logDensity > from.logDensity + 1e-4 * share * step.decrement)
-      return { theta, loads, logDensity };
-  }
-  return undefined;
-}
-
-function posteriorAt(
-  problem: Whitened,
-  prior: LogisticPrior,
-  point: WhitePoint,
-  step: NewtonStep,
-  iterations: number,
-): LogisticPosterior {
-  const { size, loadCount, loadSd } = problem;
-  const white = choleskyInverse(step.factor, size);
-  const covarianceLower = Float64Array.from(white);
-  for (let i = 0; i < size; i++) {
-    for (let j = 0; j <= i; j++) covarianceLower[lowerIndex(i, j)]! *= prior.sd[i]! * prior.sd[j]!;
-  }
-  const loadVariance = Float64Array.from({ length: loadCount }, (_, l) => {
-    const d = step.loadPrecision[l]!;
-    const row = step.coupling.subarray(l * size, (l + 1) * size);
-    return loadSd * loadSd * (1 / d + quadraticForm(white, row) / (d * d));
-  });
-  const logDeterminant =
-    choleskyLogDeterminant(step.factor, size) +
-    step.loadPrecision.reduce((sum, d) => sum + Math.log(d), 0);
-  const halfLog2Pi = 0.5 * Math.log(2 * Math.PI);
-  return {
-    mean: Array.from(point.theta, (t, j) => prior.mean[j]! + prior.sd[j]! * t),
-    covarianceLower: Array.from(covarianceLower),
-    loadMean: Array.from(point.loads, (v) => loadSd * v),
-    loadVariance: Array.from(loadVariance),
-    logEvidence: point.logDensity + (size + loadCount) * halfLog2Pi - 0.5 * logDeterminant,
+    mean: Array.from(unknowns.theta, (t, j) => prior.mean[j]! + prior.sd[j]! * t),
+    covarianceLower: Array.from(covariance),
+    loadMean: ofLoads(unknowns.loads).map((u) => loadSd * u),
+    loadVariance: ofLoads(loadVariance).map((v) => loadSd * loadSd * v),
+    logEvidence: laplaceEvidence(step),
     iterations,
     gradientNorm: step.gradientNorm,
   };
+}
+
+/**
+ * Laplace estimate of the log evidence: the powers of 2 pi of prior and integral cancel.
+ *
+ * @param step - Newton's step at the maximum
+ * @returns ln p(outcomes | prior)
+ */
+export function laplaceEvidence({ logDensity, factor, loadInverse, theta }: NewtonStep): number {
+  let logDeterminant = choleskyLogDeterminant(factor, theta.length);
+  for (let at = 0; at < loadInverse.length; at += 3) {
+    const [a, b, c] = [loadInverse[at]!, loadInverse[at + 1]!, loadInverse[at + 2]!];
+    logDeterminant -= Math.log(a * c - b * b);
+  }
+  return logDensity - 0.5 * logDeterminant;
+}
+
+/**
+ * The same problem for the engine: one block, a load's first unknown its intercept, its second idle.
+ *
+ * @param data - rows, outcomes, weights, loads
+ * @param prior - means and sds
+ * @returns the problem in units of the prior
+ */
+export function logisticProblem(data: LogisticData, prior: LogisticPrior): LatentProblem {
+  const count = data.rows.length;
+  const size = prior.mean.length;
+  const rows = new Float64Array(count * size);
+  data.rows.forEach((row, i) => {
+    for (let j = 0; j < size; j++) rows[i * size + j] = row[j]! * prior.sd[j]!;
+  });
+  const loadSd = data.load === undefined ? 0 : (prior.loadSd ?? 0);
+  const block = {
+    count,
+    size,
+    rows,
+    offset: Float64Array.from(data.rows, (row) => dot(row, prior.mean)),
+    outcome: Float64Array.from(data.outcome),
+    weight: data.weight ? Float64Array.from(data.weight) : new Float64Array(count).fill(1),
+    load: data.load ? Int32Array.from(data.load) : new Int32Array(count),
+    effects: Float64Array.from({ length: 2 * count }, (_, k) => (k % 2 === 0 ? loadSd : 0)),
+    flipped: 0,
+  };
+  // Without loads all rows share one that does nothing.
+  const most = (data.load ?? [0]).reduce((a, b) => Math.max(a, b), -1);
+  return { blocks: [block], loadCount: most + 1 };
+}
+
+function startingPoint(
+  { loadCount }: LatentProblem,
+  prior: LogisticPrior,
+  start?: LogOddsWeights,
+): Unknowns {
+  const loadSd = prior.loadSd ?? 0;
+  return {
+    theta: Float64Array.from(prior.mean, (mean, j) =>
+      start ? (start.weights[j]! - mean) / prior.sd[j]! : 0,
+    ),
+    loads: Float64Array.from({ length: 2 * loadCount }, (_, k) =>
+      start && loadSd > 0 && k % 2 === 0 ? (start.loads[k / 2] ?? 0) / loadSd : 0,
+    ),
+  };
+}
+
+function checkShapes({ rows, outcome, weight, load }: LogisticData, prior: LogisticPrior): void {
+  const size = prior.mean.length;
+  const same = (what: string, length: number, wanted: number) => {
+    if (length !== wanted)
+      throw new RangeError(`${what} must have length ${wanted}, got ${length}`);
+  };
+  same('prior.sd', prior.sd.length, size);
+  same('outcome', outcome.length, rows.length);
+  if (weight) same('weight', weight.length, rows.length);
+  if (load) same('load', load.length, rows.length);
+  if (load && !load.every((l) => Number.isInteger(l) && l >= 0)) {
+    throw new RangeError('load must hold whole numbers from 0');
+  }
+  rows.forEach((row, i) => {
+    same(`rows[${i}]`, row.length, size);
+    if (!row.every(Number.isFinite)) throw new RangeError(`rows[${i}] must be finite`);
+  });
+  for (const sd of load ? [...prior.sd, prior.loadSd ?? 0] : prior.sd) {
+    if (!(sd > 0 && sd < Infinity))
+      throw new RangeError(`prior sd must be > 0 and finite, got ${sd}`);
+  }
+  if (!prior.mean.every(Number.isFinite)) throw new RangeError('prior.mean must be finite');
+  if (!outcome.every((y) => y >= 0 && y <= 1)) throw new RangeError('outcome must be from 0 to 1');
+  if (weight && !weight.every((w) => w >= 0 && w < Infinity)) {
+    throw new RangeError('weight must be >= 0 and finite');
+  }
 }

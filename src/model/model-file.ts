@@ -1,10 +1,12 @@
 import type { Tile } from '../archive/archive.ts';
+import { fingerprint } from '../archive/fingerprint.ts';
 import { ModelFileError } from '../errors.ts';
 import { coneIndex } from '../firing/cone.ts';
-import { choleskyFactor } from '../numeric/linalg.ts';
+import { choleskyFactor, lowerIndex } from '../numeric/linalg.ts';
 import { MODEL_SCHEMA, modelShape } from './model-shape.ts';
 import type { Model } from './model.ts';
 import { priorColumns } from './priors.ts';
+import { RADIAL_INPUTS } from './radial.ts';
 import { isJudged, STAGE_PRIOR, type StageName } from './stages.ts';
 
 /** Faults named in a message; a damaged file may have thousands. */
@@ -13,7 +15,7 @@ const SHOWN_FAULTS = 8;
 const ROUNDED_CONE = 0.0051;
 
 /**
- * A model as text: one line of JSON.
+ * A model as text: one line of JSON, with a checksum over all of it.
  *
  * @param model - fitted model
  * @returns the text of the model file, the same for the same model
@@ -26,7 +28,20 @@ export function modelText(model: Model): string {
     }
     return value;
   });
-  return `${text}\n`;
+  return `${text.slice(0, -1)},"checksum":"${checksumOf(model)}"}\n`;
+}
+
+/**
+ * Over the content in one order of keys. It tells a slip of an editor from what was written; it is no
+ * seal against intent.
+ */
+function checksumOf(content: object): string {
+  const text = JSON.stringify(content, (_, value: unknown) =>
+    typeof value === 'object' && value !== null && !Array.isArray(value)
+      ? Object.fromEntries(Object.entries(value).sort(([a], [b]) => (a < b ? -1 : 1)))
+      : value,
+  );
+  return fingerprint(new Map([['model', new TextEncoder().encode(text)]]));
 }
 
 /**
@@ -41,7 +56,8 @@ export function parseModel(text: string): Model {
   const schema = typeof value === 'object' && value !== null ? Object.entries(value) : [];
   const found = schema.find(([key]) => key === 'schema')?.[1] as unknown;
   if (found !== MODEL_SCHEMA) throw foreign(found);
-  const read = modelShape.safeParse(value);
+  const { checksum, ...content } = value as Record<string, unknown>;
+  const read = modelShape.safeParse(content);
   if (!read.success) {
     const lines = read.error.issues.map((i) => `  ${i.path.join('.') || 'file'}: ${i.message}`);
     throw damaged(lines);
@@ -50,6 +66,11 @@ export function parseModel(text: string): Model {
   const wrong = (['melt', 'gloss'] as const).flatMap((name) => stageFaults(name, model));
   wrong.push(...archiveFaults(model.archive));
   if (wrong.length > 0) throw damaged(wrong);
+  if (checksum !== checksumOf(content)) {
+    throw damaged([
+      '  checksum: expected that of the content; it was changed after it was written',
+    ]);
+  }
   return model;
 }
 
@@ -106,15 +127,25 @@ function archiveFaults({ counts, tiles }: Model['archive']): string[] {
 
 /** The weights must belong to the columns this version computes, and the covariance be one. */
 function stageFaults(name: StageName, model: Model): string[] {
-  const { columns, mean, covarianceLower } = model[name];
+  const { columns, mean, covarianceLower, radial } = model[name];
   const expected = priorColumns(STAGE_PRIOR[name]);
   if (columns.join() !== expected.join())
     return [`  ${name}.columns: expected ${expected.join(' ')}`];
-  const size = columns.length;
-  if (mean.length !== size) return [`  ${name}.mean: expected ${size} numbers, got ${mean.length}`];
-  const cells = (size * (size + 1)) / 2;
-  if (covarianceLower.length !== cells) {
-    return [`  ${name}.covarianceLower: expected ${cells} numbers, got ${covarianceLower.length}`];
+  const size = columns.length + radial.centres.length;
+  const lengths = [
+    ['mean', mean.length, size],
+    ['covarianceLower', covarianceLower.length, lowerIndex(size, 0)],
+    ['radial.factorLower', radial.factorLower.length, lowerIndex(radial.centres.length, 0)],
+    ...radial.centres.map(
+      (centre, i) => [`radial.centres.${i}`, centre.length, RADIAL_INPUTS] as const,
+    ),
+  ] as const;
+  const wrong = lengths
+    .filter(([, got, wanted]) => got !== wanted)
+    .map(([what, got, wanted]) => `  ${name}.${what}: expected ${wanted} numbers, got ${got}`);
+  if (wrong.length > 0) return wrong;
+  if (radial.centres.some((_, i) => !(radial.factorLower[lowerIndex(i, i)]! > 0))) {
+    return [`  ${name}.radial.factorLower: expected a positive diagonal`];
   }
   try {
     choleskyFactor(Float64Array.from(covarianceLower), size);

@@ -140,17 +140,19 @@ const archive = z.strictObject({
   notes: z.array(text),
 });
 
+const meanAndSd = z.strictObject({ mean: number, sd: positive });
+
 const stage = z.strictObject({
   columns: z.array(text),
+  radial: z.strictObject({ centres: z.array(z.array(number)), factorLower: z.array(number) }),
   mean: z.array(number),
   covarianceLower: z.array(number),
   groups: z.array(
     z.strictObject({ name: text, columns: z.array(text), startSd: positive, sd: positive }),
   ),
-  loadSd: positive,
-  loads: z.array(z.strictObject({ load: text, tiles: count, mean: number, sd: positive })),
+  residual: z.strictObject({ startSd: positive, sd: positive }),
+  wrongVerdicts: share,
   tiles: z.strictObject({ no: count, yes: count }),
-  logEvidence: number,
 });
 
 const heldOut = z.strictObject({
@@ -180,6 +182,11 @@ export const modelShape = z.strictObject({
   archive,
   melt: stage,
   gloss: stage,
+  loadSpread: z.strictObject({ offsetSdCones: positive, glossSd: positive }),
+  loads: z.array(
+    z.strictObject({ load: text, tiles: count, offsetCones: meanAndSd, glossLogOdds: meanAndSd }),
+  ),
+  logEvidence: number,
   validation: z.strictObject({
     byCone: heldOut,
     byLoad: heldOut,

@@ -1,4 +1,5 @@
 import type { Archive } from '../archive/archive.ts';
+import type { Radial } from './radial.ts';
 
 /** The surfaces that the model tells apart, from least to most melted and smooth. */
 export const SURFACES = ['underfired', 'matte', 'gloss'] as const;
@@ -14,29 +15,45 @@ export interface PriorGroup {
   readonly sd: number;
 }
 
+/** A number known up to a Gaussian error. */
+export interface MeanAndSd {
+  readonly mean: number;
+  readonly sd: number;
+}
+
 /** What the tiles say of one load: how far it stands from the archive's other loads. */
 export interface LoadEffect {
   readonly load: string;
   readonly tiles: number;
-  /** Log-odds; 0 is the middle of all loads. */
-  readonly mean: number;
-  readonly sd: number;
+  /** Heat of the load less its cone on paper, in cones. */
+  readonly offsetCones: MeanAndSd;
+  /** What its cooling and atmosphere did to gloss, log-odds. */
+  readonly glossLogOdds: MeanAndSd;
+}
+
+/** How much loads differ, re-estimated from the tiles. */
+export interface LoadSpread {
+  /** Sd of a load's heat about the cone on paper, in cones. */
+  readonly offsetSdCones: number;
+  /** Sd of a load's own intercept of gloss, log-odds. */
+  readonly glossSd: number;
 }
 
 /** One fitted stage: a Gaussian posterior over the weights of its columns. */
 export interface Stage {
   readonly columns: readonly string[];
-  /** Posterior mean of each weight, log-odds per unit of the column. */
+  /** Radial columns, after the others: a smooth departure from them, seen through centres. */
+  readonly radial: Radial;
+  /** Posterior mean of each weight, log-odds per unit of the column; the radial ones last. */
   readonly mean: readonly number[];
   /** Posterior covariance of the weights: lower triangle, row by row. */
   readonly covarianceLower: readonly number[];
   readonly groups: readonly PriorGroup[];
-  /** Sd of the loads' own intercepts, re-estimated. */
-  readonly loadSd: number;
-  readonly loads: readonly LoadEffect[];
+  /** Sd of the smooth departure, log-odds: before any tile, and as re-estimated. */
+  readonly residual: { readonly startSd: number; readonly sd: number };
+  /** Share of verdicts taken to be the wrong way round, re-estimated. */
+  readonly wrongVerdicts: number;
   readonly tiles: { readonly no: number; readonly yes: number };
-  /** Laplace estimate of the log evidence at the re-estimated sds. */
-  readonly logEvidence: number;
 }
 
 /** How predictions held on tiles that the fit did not see. */
@@ -87,6 +104,11 @@ export interface Model {
   readonly archive: Archive;
   readonly melt: Stage;
   readonly gloss: Stage;
+  readonly loadSpread: LoadSpread;
+  /** The named loads. */
+  readonly loads: readonly LoadEffect[];
+  /** Laplace estimate of the log evidence at the re-estimated sds. */
+  readonly logEvidence: number;
   readonly validation: Validation;
   readonly notes: readonly string[];
 }

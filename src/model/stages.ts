@@ -1,54 +1,26 @@
-import type { Tile } from '../archive/archive.ts';
-import type { Heat } from '../archive/archive.ts';
-import { evidenceFit, heldFit, type EvidenceFit, type StageSds } from './evidence.ts';
-import { columnValues, scaledInputs } from './inputs.ts';
-import type { LoadEffect, Stage } from './model.ts';
-import { GLOSS_PRIOR, groupColumns, MELT_PRIOR, priorColumns, type StagePrior } from './priors.ts';
-import type { LogisticData } from './whitened.ts';
+import { keptRows, STAGE_PRIOR, STAGES, stageDesign, type Design } from './design.ts';
+import { evidenceFit, type EvidenceFit, type EvidenceStart } from './evidence.ts';
+import type { JudgedTile } from './judged.ts';
+import type { LoadEffect, LoadSpread, Stage } from './model.ts';
+import { groupColumns, priorColumns } from './priors.ts';
+import type { Scales } from './scales.ts';
 
-/** What the fit can take a tile for. */
-export type FittedVerdict = 'underfired' | 'matte' | 'gloss' | 'melted';
+export { isJudged, type FittedVerdict, type JudgedTile } from './judged.ts';
+export { STAGE_PRIOR, type StageName } from './design.ts';
 
-/** A tile that is judged and whose heat is known. */
-export interface JudgedTile extends Tile {
-  readonly verdict: FittedVerdict;
-  readonly heat: Heat;
-}
-
-/**
- * Whether the fit uses a tile: judged, not overfired, its heat known.
- *
- * @param tile - a tile of an archive
- * @returns true if the tile is fitted
- */
-export function isJudged(tile: Tile): tile is JudgedTile {
-  return tile.heat !== undefined && tile.verdict !== 'unjudged' && tile.verdict !== 'overfired';
-}
-
-/** The names of both stages. */
-export type StageName = 'melt' | 'gloss';
-
-/** Prior of each stage. */
-export const STAGE_PRIOR: Readonly<Record<StageName, StagePrior>> = {
-  melt: MELT_PRIOR,
-  gloss: GLOSS_PRIOR,
-};
-
-/** A fit of both stages, and where to begin a fit of nearly the same tiles. */
-export type StageFits = Readonly<Record<StageName, StageFit>>;
-
-export interface StageFit {
+/** A fit of both stages, with the numbers it was made from. */
+export interface StagesFit {
   readonly fit: EvidenceFit;
-  /** Names of the loads, in the order of the fit's load intercepts. */
+  readonly design: Design;
+  /** Names of the loads, in the order of the fit's. */
   readonly loads: readonly string[];
-  readonly data: LogisticData;
+  /** Tiles of each load. */
+  readonly loadTiles: readonly number[];
 }
 
 export interface FitSettings {
-  /** Sds to hold instead of re-estimating them. */
-  readonly heldSds?: Readonly<Record<StageName, StageSds>>;
-  /** Sds at which re-estimation begins, to save time. */
-  readonly startSds?: Readonly<Record<StageName, StageSds>>;
+  /** Scales to hold instead of re-estimating them. */
+  readonly heldScales?: Scales;
   /** How often each tile counts; 1 where absent. */
   readonly weight?: (tile: JudgedTile) => number;
 }
@@ -57,88 +29,118 @@ export interface FitSettings {
  * Fits both stages: melted or not on all tiles, gloss or matte on the melted and judged ones.
  *
  * @param tiles - judged tiles, in any order
- * @param settings - sds to hold, weights
- * @returns both fits
+ * @param settings - scales to hold, weights
+ * @returns the fit
  */
-export function fitStages(tiles: readonly JudgedTile[], settings: FitSettings = {}): StageFits {
+export function fitStages(
+  tiles: readonly JudgedTile[],
+  { heldScales, weight }: FitSettings = {},
+): StagesFit {
   // One order for any order of rows: the sums, and so the bytes of the answer, stay the same.
   const sorted = [...tiles].sort((a, b) => (a.tile < b.tile ? -1 : 1));
-  const melted = sorted.filter(({ verdict }) => verdict === 'matte' || verdict === 'gloss');
-  return {
-    melt: stageFit('melt', sorted, (tile) => tile.verdict !== 'underfired', settings),
-    gloss: stageFit('gloss', melted, (tile) => tile.verdict === 'gloss', settings),
-  };
+  const { loads, loadNumber } = numberedLoads(sorted);
+  const stages = STAGES.map((name) => stageDesign(name, sorted, { loadNumber, weight }));
+  const start = heldScales && { scales: heldScales };
+  return fitOf({ stages, loadCount: loads.length }, loads, start, heldScales !== undefined);
 }
 
-function stageFit(
-  name: StageName,
-  tiles: readonly JudgedTile[],
-  yes: (tile: JudgedTile) => boolean,
-  { heldSds, startSds, weight }: FitSettings,
-): StageFit {
-  const prior = STAGE_PRIOR[name];
-  const columns = priorColumns(prior);
+/**
+ * The fit without some of its tiles: sds re-estimated, centres kept, begun where the whole fit ended.
+ *
+ * @param whole - fit of all tiles
+ * @param without - tiles to leave out
+ * @returns the fit of the others
+ */
+export function fitWithout(whole: StagesFit, without: ReadonlySet<JudgedTile>): StagesFit {
+  const [melt] = whole.design.stages;
+  const { loads, loadNumber } = numberedLoads(melt!.tiles.filter((tile) => !without.has(tile)));
+  const stages = whole.design.stages.map((stage) => {
+    const kept = stage.tiles.flatMap((tile, i) => (without.has(tile) ? [] : [i]));
+    const load = Int32Array.from(kept, (i) => loadNumber.get(stage.tiles[i]!.load)!);
+    return keptRows(stage, kept, load);
+  });
+  const { scales, weights } = whole.fit;
+  return fitOf({ stages, loadCount: loads.length }, loads, { scales, weights }, false);
+}
+
+function numberedLoads(tiles: readonly JudgedTile[]) {
   const loads = [...new Set(tiles.map(({ load }) => load))];
-  const loadNumber = new Map(loads.map((load, l) => [load, l]));
-  const data = {
-    rows: tiles.map((tile) => columnValues(scaledInputs(tile.unity, tile.heat.coneIndex), columns)),
-    outcome: tiles.map((tile) => (yes(tile) ? 1 : 0)),
-    ...(weight && { weight: tiles.map(weight) }),
-    load: tiles.map(({ load }) => loadNumber.get(load)!),
-  };
-  const start = startSds && { sds: startSds[name] };
-  const fit = heldSds ? heldFit(data, prior, heldSds[name]) : evidenceFit(data, prior, start);
-  return { fit, loads, data };
+  return { loads, loadNumber: new Map(loads.map((load, l) => [load, l])) };
+}
+
+function fitOf(
+  design: Design,
+  loads: readonly string[],
+  start: EvidenceStart | undefined,
+  isHeld: boolean,
+): StagesFit {
+  const loadTiles = new Array<number>(loads.length).fill(0);
+  // The first stage asks about every tile.
+  for (const l of design.stages[0]!.load) loadTiles[l]! += 1;
+  return { fit: evidenceFit(design, start, isHeld), design, loads, loadTiles };
+}
+
+/** What a fit gives to a model. */
+export interface FittedStages {
+  readonly melt: Stage;
+  readonly gloss: Stage;
+  readonly loadSpread: LoadSpread;
+  readonly loads: readonly LoadEffect[];
+  readonly logEvidence: number;
 }
 
 /**
- * The sds that a fit ended at.
+ * Fitted stages as the model keeps them.
  *
- * @param fits - fits of both stages
- * @returns sds of both stages
- */
-export function sdsOf({ melt, gloss }: StageFits): Readonly<Record<StageName, StageSds>> {
-  return { melt: melt.fit.sds, gloss: gloss.fit.sds };
-}
-
-/**
- * A fitted stage as the model keeps it.
- *
- * @param name - which stage
- * @param fit - its fit
+ * @param fit - fit of both stages
  * @param namedLoads - loads that have a firing; those of a single unnamed tile are not listed
- * @returns the stage
+ * @returns stages, loads and their spread
  */
-export function stageOf(name: StageName, fit: StageFit, namedLoads: ReadonlySet<string>): Stage {
+export function fittedStages(fit: StagesFit, namedLoads: ReadonlySet<string>): FittedStages {
+  const { scales, logEvidence } = fit.fit;
+  const [melt, gloss] = STAGES.map((_, s) => stageOf(fit, s)) as [Stage, Stage];
+  return {
+    melt,
+    gloss,
+    loadSpread: { offsetSdCones: scales.loads.offsetCones, glossSd: scales.loads.gloss },
+    loads: loadEffects(fit, namedLoads),
+    logEvidence,
+  };
+}
+
+function stageOf({ fit, design }: StagesFit, s: number): Stage {
+  const { name, count, outcome, radial } = design.stages[s]!;
   const prior = STAGE_PRIOR[name];
-  const { posterior, sds } = fit.fit;
-  const yes = fit.data.outcome.filter((outcome) => outcome === 1).length;
+  const scales = fit.scales[name];
+  const yes = outcome.reduce((sum, y) => sum + y, 0);
   return {
     columns: priorColumns(prior),
-    mean: posterior.mean,
-    covarianceLower: posterior.covarianceLower,
+    radial,
+    mean: Array.from(fit.weights[s]!),
+    covarianceLower: Array.from(fit.covariances[s]!),
     groups: prior.groups.map((group, g) => ({
       name: group.name,
       columns: groupColumns(group),
       startSd: group.startSd,
-      sd: sds.groups[g]!,
+      sd: scales.groups[g]!,
     })),
-    loadSd: sds.load,
-    loads: loadEffects(fit, namedLoads),
-    tiles: { no: fit.data.outcome.length - yes, yes },
-    logEvidence: posterior.logEvidence,
+    residual: { startSd: prior.startResidualSd, sd: scales.residual },
+    wrongVerdicts: scales.flipped,
+    tiles: { no: count - yes, yes },
   };
 }
 
-function loadEffects({ fit, loads, data }: StageFit, named: ReadonlySet<string>): LoadEffect[] {
-  const tilesOfLoad = new Array<number>(loads.length).fill(0);
-  for (const l of data.load ?? []) tilesOfLoad[l]! += 1;
+function loadEffects(
+  { fit, loads, loadTiles }: StagesFit,
+  named: ReadonlySet<string>,
+): LoadEffect[] {
+  const at = (k: number) => ({ mean: fit.loads[k]!, sd: Math.sqrt(fit.loadVariance[k]!) });
   return loads
     .map((load, l) => ({
       load,
-      tiles: tilesOfLoad[l]!,
-      mean: fit.posterior.loadMean[l]!,
-      sd: Math.sqrt(fit.posterior.loadVariance[l]!),
+      tiles: loadTiles[l]!,
+      offsetCones: at(2 * l),
+      glossLogOdds: at(2 * l + 1),
     }))
     .filter(({ load }) => named.has(load));
 }

@@ -1,7 +1,7 @@
 import { mean } from '../numeric/summary.ts';
 import { coneText } from '../firing/cone.ts';
 import { foldsByCone, foldsByGlaze, foldsByLoad, type Fold } from './folds.ts';
-import { stageLogOdds, surfaceProbability } from './log-odds.ts';
+import { newLoadProbability } from './log-odds.ts';
 import {
   SURFACES,
   type HeldOut,
@@ -9,7 +9,7 @@ import {
   type SurfaceProbability,
   type Validation,
 } from './model.ts';
-import { fitStages, sdsOf, stageOf, type JudgedTile, type StageFits } from './stages.ts';
+import { fittedStages, fitWithout, type JudgedTile, type StagesFit } from './stages.ts';
 
 /** A tile predicted by a fit that did not see it. */
 interface Prediction {
@@ -32,18 +32,18 @@ const RELIABILITY_EDGES = [1 / 3, 0.5, 0.6, 0.7, 0.8, 0.9, 0.95, 1] as const;
  * seen (Gneiting & Raftery, J. Am. Stat. Assoc. 102 (2007) 359-378).
  *
  * @param tiles - judged tiles
- * @param fits - fit on all of them: where the re-estimation of each fold begins
+ * @param fit - fit on all of them: where the re-estimation of each fold begins
  * @returns the three accounts
  */
-export function validation(tiles: readonly JudgedTile[], fits: StageFits): Validation {
+export function validation(tiles: readonly JudgedTile[], fit: StagesFit): Validation {
   const cones = foldsByCone(tiles).map((fold) => ({
     ...fold,
     leftOut: `cone ${coneText(Number(fold.leftOut))}`,
   }));
   return {
-    byCone: heldOut(cones, tiles, fits),
-    byLoad: heldOut(foldsByLoad(tiles), tiles, fits),
-    byGlaze: heldOut(foldsByGlaze(tiles), tiles, fits),
+    byCone: heldOut(cones, tiles, fit),
+    byLoad: heldOut(foldsByLoad(tiles), tiles, fit),
+    byGlaze: heldOut(foldsByGlaze(tiles), tiles, fit),
     notes: validationNotes(tiles),
   };
 }
@@ -57,9 +57,9 @@ function validationNotes(tiles: readonly JudgedTile[]): string[] {
   ];
 }
 
-function heldOut(folds: readonly Fold[], tiles: readonly JudgedTile[], fits: StageFits): HeldOut {
+function heldOut(folds: readonly Fold[], tiles: readonly JudgedTile[], fit: StagesFit): HeldOut {
   if (folds.length < 2) return NOTHING_HELD_OUT;
-  const predictions = folds.flatMap((fold) => foldPredictions(fold, tiles, fits));
+  const predictions = folds.flatMap((fold) => foldPredictions(fold, tiles, fit));
   const parts = folds.map(({ leftOut }) => {
     const own = predictions.filter(({ fold }) => fold === leftOut);
     return { leftOut, tiles: own.length, ...scores(own) };
@@ -86,20 +86,15 @@ const NOTHING_HELD_OUT: HeldOut = {
   parts: [],
 };
 
-function foldPredictions(fold: Fold, tiles: readonly JudgedTile[], fits: StageFits): Prediction[] {
+function foldPredictions(fold: Fold, tiles: readonly JudgedTile[], fit: StagesFit): Prediction[] {
   const out = new Set(fold.tiles);
   const kept = tiles.filter((tile) => !out.has(tile));
-  const refit = fitStages(kept, { startSds: sdsOf(fits) });
-  const melt = stageOf('melt', refit.melt, new Set());
-  const gloss = stageOf('gloss', refit.gloss, new Set());
+  const refit = fittedStages(fitWithout(fit, out), new Set());
   const rates = baseRates(kept);
   return fold.tiles.map(({ unity, heat, verdict }) => ({
     fold: fold.leftOut,
     verdict,
-    probability: surfaceProbability(
-      stageLogOdds(melt, unity, heat.coneIndex, melt.loadSd),
-      stageLogOdds(gloss, unity, heat.coneIndex, gloss.loadSd),
-    ),
+    probability: newLoadProbability(refit, unity, heat.coneIndex),
     baseRate: rates,
   }));
 }

@@ -156,6 +156,28 @@ export function quadraticForm(lower: ArrayLike<number>, x: ArrayLike<number>): n
 }
 
 /**
+ * A x for a symmetric A.
+ *
+ * @param lower - lower triangle of A
+ * @param x - vector
+ * @returns the product
+ * @example
+ * Array.from(symmetricTimes(Float64Array.of(4, 1, 9), [1, 2])); // [6, 19]
+ */
+export function symmetricTimes(lower: ArrayLike<number>, x: ArrayLike<number>): Float64Array {
+  const product = new Float64Array(x.length);
+  for (let i = 0; i < x.length; i++) {
+    const row = lowerIndex(i, 0);
+    for (let j = 0; j < i; j++) {
+      product[i]! += lower[row + j]! * x[j]!;
+      product[j]! += lower[row + j]! * x[i]!;
+    }
+    product[i]! += lower[row + i]! * x[i]!;
+  }
+  return product;
+}
+
+/**
  * Sum of products of two equally long lists.
  *
  * @param a - first list

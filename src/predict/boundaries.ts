@@ -1,7 +1,6 @@
 import type { UnvalidatedModel } from '../model/fit.ts';
 import { hazardNotes } from '../chemistry/hazards.ts';
 import { coneText } from '../firing/cone.ts';
-import { columnValues, scaledInputs } from '../model/inputs.ts';
 import { stageLogOdds } from '../model/log-odds.ts';
 import { isJudged, type StageName } from '../model/stages.ts';
 import { findRoot } from '../numeric/roots.ts';
@@ -18,13 +17,14 @@ import { middleComposition } from './middle.ts';
 import {
   evenNodes,
   gridZeros,
+  nearestNode,
   nearestPlace,
   placePosterior,
   type Direction,
   type GridZero,
   type Place,
 } from './place.ts';
-import { lineRows, logOddsAlong, posteriorDraws, type StageDraws } from './posterior-draws.ts';
+import { normalTable, pathDraws, type NormalTable, type PathDraws } from './path-draws.ts';
 import { modelStamp } from './predict.ts';
 
 export interface BoundariesOptions {
@@ -39,8 +39,10 @@ const HALF_CONE = 0.5;
 /** Tiles count as near a boundary up to this far in heat. */
 const NEAR_CONES = 0.5;
 
-/** Both stages' posterior draws. */
-type Draws = Readonly<Record<StageName, StageDraws>>;
+/** Draws of both stages over a line at three heats, end to end. */
+type LineDraws = Readonly<Record<StageName, PathDraws>>;
+/** The heats, from the cone asked about. */
+const HEATS = [-HALF_CONE, 0, HALF_CONE] as const;
 
 /**
  * Where the melt and the gloss boundary cross three lines through a composition, at each cone.
@@ -61,7 +63,7 @@ export function boundaries(
   const tiles = model.archive.tiles.filter(isJudged);
   const middle = through ?? middleComposition(tiles);
   const lines = compositionLines(middle.unity, tiles);
-  const draws = posteriorDraws(model);
+  const tables = { melt: normalTable('melt'), gloss: normalTable('gloss') };
   const experience = experienceOf(tiles);
   return {
     schema: 'coneshift.boundaries/1',
@@ -69,7 +71,10 @@ export function boundaries(
     through: middle.unity,
     throughSource: through ? `asked: ${through.point}` : middle.point,
     boundaries: coneIndexes.flatMap((coneIndex) =>
-      lines.flatMap((line) => lineBoundaries({ model, draws, experience, line, coneIndex })),
+      lines.flatMap((line) => {
+        const draws = lineDraws(model, tables, line, coneIndex);
+        return lineBoundaries({ model, draws, experience, line, coneIndex });
+      }),
     ),
     notes: hazardNotes(middle.unity),
   };
@@ -77,10 +82,26 @@ export function boundaries(
 
 interface Question {
   readonly model: UnvalidatedModel;
-  readonly draws: Draws;
+  readonly draws: LineDraws;
   readonly experience: Experience;
   readonly line: CompositionLine;
   readonly coneIndex: number;
+}
+
+function lineDraws(
+  model: UnvalidatedModel,
+  tables: Readonly<Record<StageName, NormalTable>>,
+  line: CompositionLine,
+  coneIndex: number,
+): LineDraws {
+  const nodes = evenNodes(line.range, CELLS).map((place) => line.unityAt(place));
+  const path = HEATS.flatMap((off) =>
+    nodes.map((unity) => ({ unity, coneIndex: coneIndex + off })),
+  );
+  return {
+    melt: pathDraws(model.melt, path, tables.melt),
+    gloss: pathDraws(model.gloss, path, tables.gloss),
+  };
 }
 
 function lineBoundaries(question: Question): Boundary[] {
@@ -101,10 +122,9 @@ interface Crossing {
 function boundaryRow(question: Question, kind: StageName, crossing: Crossing): Boundary {
   const { line, coneIndex } = question;
   const { place: value } = crossing;
-  const drawn = (off: number) => drawnPlaces(question, kind, coneIndex + off, crossing);
-  const there = drawn(0);
-  const [cooler, hotter] = [drawn(-HALF_CONE), drawn(HALF_CONE)];
-  const moves = there.map((place, draw) => movePerCone(cooler[draw]!, place, hotter[draw]!));
+  const drawn = drawnPlaces(question, kind, crossing);
+  const there = drawn.map(([, place]) => place);
+  const moves = drawn.map((places) => movePerCone(...places));
   const [below, above] = sides(question, kind, crossing);
   return {
     cone: coneText(coneIndex),
@@ -145,35 +165,43 @@ function overallTrend(question: Question, kind: StageName): Crossing {
   return { place: null, direction: high! > low! ? 'rising' : 'falling' };
 }
 
-/** The place in each draw of the posterior: of its crossings in the same direction, the nearest. */
+/** The place at each heat in each draw of the posterior. */
 function drawnPlaces(
   { draws, line }: Question,
   kind: StageName,
-  coneIndex: number,
   crossing: Crossing,
-): Place[] {
+): (readonly [Place, Place, Place])[] {
   const nodes = evenNodes(line.range, CELLS);
-  const rowsOf = (stage: StageName) =>
-    nodes.map((place) =>
-      columnValues(scaledInputs(line.unityAt(place), coneIndex), draws[stage].columns),
-    );
-  const own = lineRows(rowsOf(kind));
-  const melt = rowsOf('melt').map((row) => lineRows([row]));
   return Array.from({ length: draws[kind].count }, (_, draw) => {
-    const logOdds = logOddsAlong(draws[kind], draw, own);
-    const zeros = gridZeros(logOdds, nodes).filter(
-      ({ direction }) => direction === crossing.direction,
-    );
-    const isMelted = ({ cell }: GridZero) =>
-      kind === 'melt' || logOddsAlong(draws.melt, draw, melt[cell]!)[0]! >= 0;
-    const shown = zeros.filter(isMelted).map(({ place }) => place);
-    if (shown.length > 0) return nearestPlace(shown, crossing.place ?? shown[0]!);
-    // It crosses, but only where the glaze is not melted.
-    if (zeros.length > 0) return 'none';
-    const from = crossing.place === null ? 0 : nearestNode(nodes, crossing.place);
-    const isAbove = logOdds[from]! >= 0 === (crossing.direction === 'rising');
-    return isAbove ? 'below' : 'beyond';
+    const own = draws[kind].logOdds(draw);
+    const melt = kind === 'melt' ? own : draws.melt.logOdds(draw);
+    const at = (heat: number) => {
+      const part = [heat * nodes.length, (heat + 1) * nodes.length] as const;
+      return drawnPlace(nodes, own.subarray(...part), melt.subarray(...part), kind, crossing);
+    };
+    return [at(0), at(1), at(2)] as const;
   });
+}
+
+/** Of the crossings in the same direction, the nearest. */
+function drawnPlace(
+  nodes: readonly number[],
+  logOdds: Float64Array,
+  melt: Float64Array,
+  kind: StageName,
+  crossing: Crossing,
+): Place {
+  const zeros = gridZeros(logOdds, nodes).filter(
+    ({ direction }) => direction === crossing.direction,
+  );
+  const isMelted = ({ cell }: GridZero) => kind === 'melt' || melt[cell]! >= 0;
+  const shown = zeros.filter(isMelted).map(({ place }) => place);
+  if (shown.length > 0) return nearestPlace(shown, crossing.place ?? shown[0]!);
+  // It crosses, but only where the glaze is not melted.
+  if (zeros.length > 0) return 'none';
+  const from = crossing.place === null ? 0 : nearestNode(nodes, crossing.place);
+  const isAbove = logOdds[from]! >= 0 === (crossing.direction === 'rising');
+  return isAbove ? 'below' : 'beyond';
 }
 
 /** Place half a cone hotter less half a cone cooler; twice the half where one of them is missing. */
@@ -221,9 +249,4 @@ function placeSupport({ experience, coneIndex, line }: Question, value: number |
   const tilesNear = experience.tiles.filter(({ heat }, i) => isNear(heat!.coneIndex, i)).length;
   const { support, nearest } = surroundings(experience, squares, coneIndex);
   return { tilesNear, support, nearest };
-}
-
-function nearestNode(nodes: readonly number[], place: number): number {
-  const cell = (place - nodes[0]!) / (nodes[1]! - nodes[0]!);
-  return Math.min(nodes.length - 1, Math.max(0, Math.round(cell)));
 }

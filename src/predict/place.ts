@@ -106,3 +106,17 @@ export function nearestPlace(places: readonly number[], to: number): number {
 export function evenNodes([low, high]: readonly [number, number], cells: number): number[] {
   return Array.from({ length: cells + 1 }, (_, i) => low + ((high - low) * i) / cells);
 }
+
+/**
+ * The node of an even grid that is nearest to a place.
+ *
+ * @param nodes - evenly spaced, ascending, at least two
+ * @param place - in units of the nodes
+ * @returns its number; the first or the last where the place lies outside
+ * @example
+ * nearestNode([0, 0.5, 1], 0.7); // 1
+ */
+export function nearestNode(nodes: readonly number[], place: number): number {
+  const cell = (place - nodes[0]!) / (nodes[1]! - nodes[0]!);
+  return Math.min(nodes.length - 1, Math.max(0, Math.round(cell)));
+}

@@ -96,16 +96,22 @@ export function coneAnswers(
     const melt = stageLogOdds(model.melt, unity, coneIndex);
     const gloss = stageLogOdds(model.gloss, unity, coneIndex);
     const probability = surfaceProbability(melt, gloss);
+    const interval90 = surfaceIntervals(melt, gloss);
     const around = surroundings(experience, squares, coneIndex);
     return {
       cone: coneText(coneIndex),
       coneIndex,
       surface: mostProbable(probability),
       probability,
-      interval90: surfaceIntervals(melt, gloss),
+      interval90,
       support: around.support,
       nearest: around.nearest,
-      notes: [...supportNotes(around), ...heatNotes(experience, squares, coneIndex), ...hazards],
+      notes: [
+        ...supportNotes(around),
+        ...heatNotes(experience, squares, coneIndex),
+        ...tailNotes(probability, interval90),
+        ...hazards,
+      ],
     };
   });
 }
@@ -150,6 +156,22 @@ function supportNotes({ support, tilesWithinEdge }: Surroundings): string[] {
   return support === 'edge'
     ? [`at the edge of the archive (${within}, too few of them close): fire a tile first`]
     : [`outside the archive (${within}): carried over from tiles farther off`];
+}
+
+/** Half a per cent: less is not seen on a page. */
+const SEEN_OFF = 0.005;
+
+/** A mean can lie off its own interval where the log-odds are far from 0 and hardly known. */
+function tailNotes(probability: SurfaceProbability, interval90: SurfaceInterval90): string[] {
+  const off = SURFACES.filter(
+    (s) =>
+      probability[s] < interval90[s][0] - SEEN_OFF || probability[s] > interval90[s][1] + SEEN_OFF,
+  );
+  if (off.length === 0) return [];
+  return [
+    `the chance of ${off.join(' and that of ')} lies off its interval: it is a mean of many small chances ` +
+      'and a few large ones, so far is this from any tile',
+  ];
 }
 
 /** Heat beyond the tiles of glazes like this one: what is not modelled there. */

@@ -8,7 +8,7 @@ import {
   tilesWithin,
   type Experience,
 } from './experience.ts';
-import { posteriorDraws } from './posterior-draws.ts';
+import { normalTable } from './path-draws.ts';
 import { coneAnswers, judgedExperience, modelStamp } from './predict.ts';
 import { turns } from './turns.ts';
 import { shiftInWords } from './words.ts';
@@ -41,7 +41,7 @@ export function shift(
   const overfired = experienceOf(
     model.archive.tiles.filter((tile) => tile.verdict === 'overfired' && !isJudged(tile)),
   );
-  const draws = posteriorDraws(model);
+  const tables = { melt: normalTable('melt'), gloss: normalTable('gloss') };
   return {
     schema: 'coneshift.shift/1',
     model: modelStamp(model),
@@ -51,7 +51,7 @@ export function shift(
         point: point.point,
         unity: point.unity,
         cones: answers,
-        turns: turns(model, draws, point.unity, lookedAt),
+        turns: turns(model, tables, point.unity, lookedAt),
         lookedAt,
         words: shiftInWords(answers),
         overfiredNear: overfiredNear(overfired, point, cones),

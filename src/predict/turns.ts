@@ -1,14 +1,14 @@
 import type { UnvalidatedModel } from '../model/fit.ts';
 import type { Unity } from '../chemistry/unity.ts';
 import { coneText } from '../firing/cone.ts';
-import { columnValues, scaledInputs } from '../model/inputs.ts';
 import { stageLogOdds, surfaceProbability } from '../model/log-odds.ts';
-import type { Surface } from '../model/model.ts';
+import { SURFACES, type Surface } from '../model/model.ts';
 import { log1pExp } from '../numeric/logistic.ts';
 import { findRoot } from '../numeric/roots.ts';
 import type { Turn } from './answers.ts';
-import { evenNodes, nearestPlace, placePosterior, type Place } from './place.ts';
-import { lineRows, logOddsAlong, type StageDraws } from './posterior-draws.ts';
+import { evenNodes, nearestNode, nearestPlace, placePosterior, type Place } from './place.ts';
+import { pathDraws, type NormalTable } from './path-draws.ts';
+import type { StageName } from '../model/stages.ts';
 import { mostProbable } from './predict.ts';
 
 /** Distance of the nodes at which surfaces are compared, in cones; places are interpolated. */
@@ -33,27 +33,27 @@ interface Change {
  * has no such turn.
  *
  * @param model - fitted model
- * @param draws - posterior draws of both stages
+ * @param tables - normal numbers of both stages
  * @param unity - composition
  * @param range - cones between which to look
  * @returns the turns, from cool to hot
  */
 export function turns(
   model: UnvalidatedModel,
-  draws: { readonly melt: StageDraws; readonly gloss: StageDraws },
+  tables: Readonly<Record<StageName, NormalTable>>,
   unity: Unity,
   range: readonly [number, number],
 ): Turn[] {
   const nodes = evenNodes(range, Math.max(1, Math.round((range[1] - range[0]) / CELL_CONES)));
   const found = meanChanges(model, unity, nodes);
   if (found.length === 0) return [];
-  const paths = drawPaths(draws, unity, nodes);
-  return found.map(({ from, to, at }) => ({
+  const places = drawnPlaces(model, tables, unity, nodes, found);
+  return found.map(({ from, to, at }, turn) => ({
     from,
     to,
     coneIndex: at,
     cone: coneText(at),
-    ...placePosterior(paths.map((path) => turnPlace(path, nodes, { from, to, at }))),
+    ...placePosterior(places[turn]!),
   }));
 }
 
@@ -64,43 +64,51 @@ function meanChanges(model: UnvalidatedModel, unity: Unity, nodes: readonly numb
       stageLogOdds(model.gloss, unity, cone),
     );
   const path = nodes.map((cone) => mostProbable(probability(cone)));
-  return changesOf(path).map(({ from, to, cell }) => {
+  return path.slice(1).flatMap((to, cell) => {
+    const from = path[cell]!;
+    if (from === to) return [];
     const contest = (cone: number) => {
       const p = probability(cone);
       return p[to] - p[from];
     };
-    return { from, to, at: findRoot(contest, nodes[cell]!, nodes[cell + 1]!, PLACE_TOLERANCE) };
+    return [{ from, to, at: findRoot(contest, nodes[cell]!, nodes[cell + 1]!, PLACE_TOLERANCE) }];
   });
 }
 
-/** Surfaces along the nodes in one draw, and by how much the winner of each node leads. */
-interface DrawPath {
-  readonly surfaces: readonly Surface[];
+/** Place of each turn in each draw, [turns][draws]. */
+function drawnPlaces(
+  model: UnvalidatedModel,
+  tables: Readonly<Record<StageName, NormalTable>>,
+  unity: Unity,
+  nodes: readonly number[],
+  found: readonly Change[],
+): Place[][] {
+  const path = nodes.map((coneIndex) => ({ unity, coneIndex }));
+  const melt = pathDraws(model.melt, path, tables.melt);
+  const gloss = pathDraws(model.gloss, path, tables.gloss);
+  const places: Place[][] = found.map(() => []);
+  const codes = new Uint8Array(nodes.length);
+  for (let draw = 0; draw < melt.count; draw++) {
+    const drawn = { codes, melt: melt.logOdds(draw), gloss: gloss.logOdds(draw) };
+    for (let i = 0; i < codes.length; i++) codes[i] = likeliest(drawn.melt[i]!, drawn.gloss[i]!);
+    found.forEach((turn, t) => places[t]!.push(turnPlace(drawn, nodes, turn)));
+  }
+  return places;
+}
+
+/** One draw: log-odds along the nodes, and the likeliest surface there, as its place in SURFACES. */
+interface DrawnPath {
+  readonly codes: Uint8Array;
   readonly melt: Float64Array;
   readonly gloss: Float64Array;
 }
 
-function drawPaths(
-  draws: { readonly melt: StageDraws; readonly gloss: StageDraws },
-  unity: Unity,
-  nodes: readonly number[],
-): DrawPath[] {
-  const rowsOf = ({ columns }: StageDraws) =>
-    lineRows(nodes.map((cone) => columnValues(scaledInputs(unity, cone), columns)));
-  const meltRows = rowsOf(draws.melt);
-  const glossRows = rowsOf(draws.gloss);
-  return Array.from({ length: draws.melt.count }, (_, draw) => {
-    const melt = logOddsAlong(draws.melt, draw, meltRows);
-    const gloss = logOddsAlong(draws.gloss, draw, glossRows);
-    const surfaces = nodes.map((_, i) => likeliest(melt[i]!, gloss[i]!));
-    return { surfaces, melt, gloss };
-  });
-}
-
 /** The surface with the highest probability, from the log-odds of both stages. */
-function likeliest(melt: number, gloss: number): Surface {
-  const melted = gloss > 0 ? 'gloss' : 'matte';
-  return contest(melt, gloss, 'underfired', melted) > 0 ? melted : 'underfired';
+function likeliest(melt: number, gloss: number): number {
+  // The likelier of matte and gloss has at least half of what melted.
+  if (melt <= 0) return 0;
+  if (melt < Math.LN2 && melt <= log1pExp(-Math.abs(gloss))) return 0;
+  return gloss > 0 ? 2 : 1;
 }
 
 /** ln P(to) - ln P(from). */
@@ -114,42 +122,29 @@ function logProbability(melt: number, gloss: number, surface: Surface): number {
   return -log1pExp(surface === 'gloss' ? -gloss : gloss);
 }
 
-function turnPlace(path: DrawPath, nodes: readonly number[], turn: Change): Place {
-  const same = changesOf(path.surfaces).filter(
-    ({ from, to }) => from === turn.from && to === turn.to,
-  );
-  if (same.length > 0)
-    return nearestPlace(
-      same.map((change) => crossing(path, nodes, change)),
-      turn.at,
-    );
-  const there = nodes.indexOf(nearestPlace(nodes, turn.at));
-  if (path.surfaces.slice(there).every((surface) => surface === turn.from)) return 'beyond';
-  const before = path.surfaces.slice(0, there + 1);
-  return before.every((surface) => surface === turn.to) ? 'below' : 'none';
+function turnPlace(path: DrawnPath, nodes: readonly number[], turn: Change): Place {
+  const { codes } = path;
+  const from = SURFACES.indexOf(turn.from);
+  const to = SURFACES.indexOf(turn.to);
+  const same: number[] = [];
+  for (let cell = 0; cell + 1 < codes.length; cell++) {
+    if (codes[cell] === from && codes[cell + 1] === to)
+      same.push(crossing(path, nodes, turn, cell));
+  }
+  if (same.length > 0) return nearestPlace(same, turn.at);
+  const there = nearestNode(nodes, turn.at);
+  if (codes.subarray(there).every((code) => code === from)) return 'beyond';
+  return codes.subarray(0, there + 1).every((code) => code === to) ? 'below' : 'none';
 }
 
 function crossing(
-  path: DrawPath,
+  path: DrawnPath,
   nodes: readonly number[],
-  { from, to, cell }: CellChange,
+  { from, to }: Change,
+  cell: number,
 ): number {
   const lead = (i: number) => contest(path.melt[i]!, path.gloss[i]!, from, to);
   const [before, after] = [lead(cell), lead(cell + 1)];
   const share = before < 0 && after > 0 ? before / (before - after) : 0.5;
   return nodes[cell]! + share * (nodes[cell + 1]! - nodes[cell]!);
-}
-
-interface CellChange {
-  readonly from: Surface;
-  readonly to: Surface;
-  /** The change lies between this node and the next. */
-  readonly cell: number;
-}
-
-function changesOf(path: readonly Surface[]): CellChange[] {
-  return path.slice(1).flatMap((to, cell) => {
-    const from = path[cell]!;
-    return from === to ? [] : [{ from, to, cell }];
-  });
 }

@@ -5,6 +5,7 @@ import type { Inventory } from '../archive/inventory.ts';
 import type { Stage } from '../model/model.ts';
 import { silicaToAlumina } from './composition-words.ts';
 import type { FitOutcome } from './fit-page.ts';
+import { fewTilesNote } from './held-out-sections.ts';
 import type { RecipeUnity } from './unity-page.ts';
 
 /**
@@ -32,22 +33,46 @@ export function checkAnswer({ archive, faults }: ArchiveReading, held: Inventory
  * @param outcome - model and what was done with it
  * @returns plain data
  */
-export function fitAnswer({ model, leftOut, writtenTo }: FitOutcome) {
+export function fitAnswer({ model, leftOut, writtenTo, doubts = [] }: FitOutcome) {
   return {
     schema: 'coneshift.fit/1',
     archive: model.archive.fingerprint,
     counts: model.archive.counts,
     melt: stageAnswer(model.melt),
     gloss: stageAnswer(model.gloss),
+    loadSpread: model.loadSpread,
+    loads: model.loads,
+    logEvidence: model.logEvidence,
     validation: model.validation,
     faults: leftOut,
-    notes: model.notes,
+    notes: [...doubts, ...fewTilesNote(model.validation), ...model.notes],
     writtenTo: writtenTo ?? null,
   };
 }
 
-function stageAnswer({ tiles, groups, loadSd, loads, logEvidence }: Stage) {
-  return { tiles, groups, loadSd, loads, logEvidence };
+/**
+ * What `fit --json` writes where faulty rows stop the fit.
+ *
+ * @param reading - archive and faults
+ * @returns plain data: counts and faults, without a model
+ * @example
+ * const csv = 'tile,SiO2,Al2O3,CaO,cone,surface\nA,3,0.4,1,six,gloss\n';
+ * const reading = readArchive(new Map([['a.csv', new TextEncoder().encode(csv)]]));
+ * unfittedAnswer(reading).counts.refused; // 1
+ */
+export function unfittedAnswer({ archive, faults }: ArchiveReading) {
+  return {
+    schema: 'coneshift.fit/1',
+    archive: archive.fingerprint,
+    counts: archive.counts,
+    faults,
+    notes: archive.notes,
+    writtenTo: null,
+  };
+}
+
+function stageAnswer({ tiles, groups, residual, wrongVerdicts }: Stage) {
+  return { tiles, groups, residual, wrongVerdicts };
 }
 
 /**

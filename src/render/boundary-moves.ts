@@ -1,7 +1,7 @@
 import type { Boundary, BoundaryAxis } from '../predict/answers.ts';
 import { alignedLines, type Align } from './aligned.ts';
 import { signed } from './figures.ts';
-import { INDENT, type Section } from './page.ts';
+import { INDENT, type Look, type Section } from './page.ts';
 
 /**
  * Words for an axis.
@@ -21,9 +21,10 @@ const ALIGN: readonly Align[] = ['left', 'left', 'right', 'right', 'left'];
  * How far each boundary moves for one cone more heat, with its interval.
  *
  * @param boundaries - of all cones
+ * @param look - width of the page
  * @returns the section: a row for each cone at which a boundary has a place
  */
-export function moveSection(boundaries: readonly Boundary[]): Section {
+export function moveSection(boundaries: readonly Boundary[], { columns }: Look): Section {
   const moving = boundaries.filter(({ perCone }) => perCone !== null);
   const names = [...new Set(moving.map(nameOf))];
   const rows = names.flatMap((name) =>
@@ -32,7 +33,7 @@ export function moveSection(boundaries: readonly Boundary[]): Section {
       .map((one, i) => [...(i === 0 ? nameCells(one) : ['', '']), ...moveCells(one)]),
   );
   const head = ['along', 'from and to', 'cone', 'moved', '90 % interval'];
-  const lines = alignedLines({ rows: [head, ...rows], align: ALIGN, indent: INDENT });
+  const lines = alignedLines({ rows: [head, ...rows], align: ALIGN, indent: INDENT, columns });
   return { heading: 'Moved by one cone more heat', lines: rows.length === 0 ? [] : lines };
 }
 

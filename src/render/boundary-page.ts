@@ -5,13 +5,14 @@ import { compositionWords } from './composition-words.ts';
 import { AXIS_WORDS, digitsAlong, moveSection } from './boundary-moves.ts';
 import { nearTileWords } from './cone-table.ts';
 import { fixed, percentDigits, placeRange } from './figures.ts';
-import { INDENT, pageOf, point, type Look, type Section } from './page.ts';
-import { printable } from './printable.ts';
+import { INDENT, pageOf, point, prose, type Look, type Section } from './page.ts';
+import { cutTo, printable } from './printable.ts';
 import { countOf } from './sentences.ts';
 import { wrapped } from './wrapped.ts';
 
 /** Below this share a line without a crossing is not worth a word. */
 const LEAST_SHARE = 0.005;
+const WIDEST_NAME = 60;
 
 /**
  * The page of `boundaries`: at each cone, where both boundaries cross each line, and how surely.
@@ -25,9 +26,14 @@ export function boundaryPage(answer: Boundaries, look: Look): string {
   const cones = [...new Set(boundaries.map(({ cone }) => cone))];
   return pageOf(
     [
-      { lines: [wrapped(printable(introduction(answer)), look)] },
-      ...cones.map((cone) => coneSection(boundaries.filter((boundary) => boundary.cone === cone))),
-      moveSection(boundaries),
+      { lines: [wrapped(introduction(answer), look)] },
+      ...cones.map((cone) =>
+        coneSection(
+          boundaries.filter((boundary) => boundary.cone === cone),
+          look,
+        ),
+      ),
+      moveSection(boundaries, look),
       { heading: 'Nearest tiles', lines: nearestLines(boundaries, look) },
       { heading: 'How to read it', lines: readingLines(model.tiles, look) },
       { heading: 'Notes', lines: notes.map((note) => point(note, look)) },
@@ -38,7 +44,8 @@ export function boundaryPage(answer: Boundaries, look: Look): string {
 }
 
 function introduction({ throughSource, through }: Boundaries): string {
-  return `Lines through ${throughSource.replace(/^asked: /, '')}: ${compositionWords(through)}.`;
+  const name = cutTo(printable(throughSource.replace(/^asked: /, '')), WIDEST_NAME);
+  return `Lines through ${name}: ${compositionWords(through)}.`;
 }
 
 function readingLines(tiles: number, look: Look): string[] {
@@ -48,27 +55,47 @@ function readingLines(tiles: number, look: Look): string[] {
     'Near: judged tiles within 3 steps of the place (a step is a change of one oxide worth a new ' +
       'tile) and half a cone of the heat. Archive: whether the place lies inside, at the edge or ' +
       'outside what was fired.',
-    'An interval that leaves the range looked at says so. "no place" counts the part of the posterior ' +
-      'in which the line does not meet the boundary there.',
+    'An interval that leaves the range looked at says so. "no place": the chance, as the tiles leave ' +
+      'it open, that the line does not meet the boundary there.',
   ];
   return lines.map((line) => point(line, look));
 }
 
 const HEAD = ['', 'place', 'above it', '90 % interval', 'no place', 'near', 'archive'];
+/** The word for the boundary and the gap to what is said of it. */
+const KIND_COLUMNS = 7;
 const ALIGN: readonly Align[] = ['left', 'right', 'left', 'left', 'right', 'right', 'left'];
 
-function coneSection(boundaries: readonly Boundary[]): Section {
+function coneSection(boundaries: readonly Boundary[], look: Look): Section {
+  const placed = boundaries.filter(({ value }) => value !== null);
   const [head = '', ...rows] = alignedLines({
-    rows: [HEAD, ...boundaries.map(boundaryCells)],
+    rows: [HEAD, ...placed.map(boundaryCells)],
     align: ALIGN,
     indent: 2 * INDENT,
+    columns: look.columns,
   });
   // What is held along a line stands above its first row.
   const lines = boundaries.flatMap((boundary, i) => {
     const isFirst = boundaries[i - 1]?.along !== boundary.along;
-    return [...(isFirst ? [`${' '.repeat(INDENT)}${lineWords(boundary)}`] : []), rows[i]!];
+    const row = boundary.value === null ? noPlace(boundary, look) : rows[placed.indexOf(boundary)]!;
+    return [...(isFirst ? [prose(lineWords(boundary), look)] : []), row];
   });
-  return { heading: `Cone ${boundaries[0]?.cone ?? ''}`, lines: [head, ...lines] };
+  const shown = placed.length === 0 ? lines : [head, ...lines];
+  return { heading: `Cone ${boundaries[0]?.cone ?? ''}`, lines: shown };
+}
+
+/** A line that does not meet the boundary, in words. */
+function noPlace(boundary: Boundary, { columns }: Look): string {
+  const { kind, along, above, interval90, lookedAt, noCrossing } = boundary;
+  const show = (place: number) => place.toFixed(digitsAlong(along));
+  const [from, to] = lookedAt;
+  const isKnown = interval90.some((end) => end !== null);
+  const place = isKnown ? `; if there is one, 90 %: ${placeRange(interval90, lookedAt, show)}` : '';
+  const text =
+    `none from ${show(from)} to ${show(to)}, ${above} all along (chance of none ` +
+    `${percentDigits(noCrossing)} %${place})`;
+  const first = `${' '.repeat(2 * INDENT)}${kind.padEnd(KIND_COLUMNS)}`;
+  return wrapped(text, { columns, first, next: ' '.repeat(first.length) });
 }
 
 function lineWords({ along, at }: Boundary): string {
@@ -86,7 +113,6 @@ function boundaryCells(boundary: Boundary): string[] {
   const digits = digitsAlong(along);
   const range = placeRange(interval90, lookedAt, (place) => place.toFixed(digits));
   const missing = noCrossing < LEAST_SHARE ? '.' : `${percentDigits(noCrossing)} %`;
-  if (value === null) return [kind, 'none', `all ${above}`, range, missing];
   const place = fixed(value, digits);
   return [kind, place, above, range, missing, String(tilesNear), support ?? '-'];
 }

@@ -29,7 +29,7 @@ const WIDEST_NAME = 24;
 export function checkPage(reading: ArchiveReading, held: Inventory, look: Look): string {
   const { archive, faults } = reading;
   const sections: Section[] = [
-    { lines: [countsLine(archive.counts), ...verdictOnFaults(faults)] },
+    { lines: [wrapped(countsLine(archive.counts), look), ...verdictOnFaults(reading)] },
     { heading: 'Files', lines: fileLines(reading) },
     { heading: 'As it was understood', lines: archive.notes.map((note) => point(note, look)) },
     { heading: 'Tiles by cone and surface', lines: coneLines(held.byCone, look) },
@@ -57,9 +57,15 @@ export function faultText(fault: Fault, { columns }: Look): string {
   return wrapped(printable(faultLine(fault)), { columns, first, next: first.repeat(2) });
 }
 
-function verdictOnFaults(faults: readonly Fault[]): string[] {
-  if (faults.length === 0) return ['No faults: the archive can be fitted.'];
-  return [`${countOf(faults.length, 'fault')}, listed at the end; mend them, then fit.`];
+function verdictOnFaults({ archive, faults }: ArchiveReading): string[] {
+  if (faults.length > 0) {
+    return [`${countOf(faults.length, 'fault')}, listed at the end; mend them, then fit.`];
+  }
+  if (archive.counts.fitted > 0) return ['No faults: the archive can be fitted.'];
+  return [
+    'No faults, but no judged tile: fit will answer from the prior alone, from what is',
+    'usual elsewhere; nothing is learnt yet.',
+  ];
 }
 
 function fileLines({ archive }: ArchiveReading): string[] {
@@ -79,9 +85,10 @@ function coneLines(byCone: readonly ConeTiles[], look: Look): string[] {
     rows: [head, ...rows],
     align: ['left', ...head.slice(1).map(() => 'right' as const)],
     indent: INDENT,
+    columns: look.columns,
   });
   const note =
-    'Loads between two cones count to the nearer. "melted" is known to have melted and no more.';
+    'Loads between two cones count to the nearer, half way (6.5) to the hotter. "melted" is known to have melted and no more.';
   return [...table, prose(note, look)];
 }
 
@@ -106,6 +113,7 @@ function compositionLines({ ranges, otherOxides }: Inventory, look: Look): strin
     rows: [head, ...rows],
     align: ['left', ...head.slice(1).map(() => 'right' as const)],
     indent: INDENT,
+    columns: look.columns,
   });
   const others = otherOxides.map(({ oxide, tiles, highest }) => {
     return `${oxide} up to ${fixed(highest, 2)} (${countOf(tiles, 'tile')})`;

@@ -13,9 +13,13 @@ const WIDEST_NAME = 20;
  * The answers for one glaze as a table: a row a cone.
  *
  * @param answers - of one glaze, in the order of the rows
- * @returns the heading line and one line a cone
+ * @param look - width of the page
+ * @returns the headings and one text a cone, of two lines where the page is narrow
  */
-export function coneTable(answers: readonly ConeAnswer[]): { head: string; rows: string[] } {
+export function coneTable(
+  answers: readonly ConeAnswer[],
+  { columns }: Look,
+): { head: string; rows: string[] } {
   const rows = answers.map(({ cone, probability, interval90, surface, support }) => [
     cone,
     probabilityCell(probability.underfired, interval90.underfired),
@@ -28,6 +32,7 @@ export function coneTable(answers: readonly ConeAnswer[]): { head: string; rows:
     rows: [HEAD, ...rows],
     align: ALIGN,
     indent: INDENT,
+    columns,
   });
   return { head, rows: lines };
 }

@@ -17,6 +17,8 @@ export interface FitOutcome {
   readonly leftOut: readonly Fault[];
   /** Where the model was written; undefined if nowhere. */
   readonly writtenTo?: string | undefined;
+  /** What puts the compositions of the archive in doubt. */
+  readonly doubts?: readonly string[];
   /** Also the prior sds, and every load and glaze left out. */
   readonly detail?: boolean;
 }
@@ -29,28 +31,46 @@ export interface FitOutcome {
  * @returns the page
  */
 export function fitPage(outcome: FitOutcome, look: Look): string {
-  const { model, leftOut, writtenTo, detail = false } = outcome;
-  const notes = [...model.notes, ...leftOutNote(leftOut)];
+  const { model, leftOut, writtenTo, detail = false, doubts = [] } = outcome;
+  const notes = [...doubts, ...leftOutNote(leftOut), ...model.notes];
   return pageOf(
     [
-      { lines: [countsLine(model.archive.counts), ...fittedLines(model, look)] },
-      ...heldOutSections(model.validation, detail, look),
+      { lines: [wrapped(countsLine(model.archive.counts), look), ...fittedLines(model, look)] },
+      ...(isNothingFitted(model) ? [] : heldOutSections(model.validation, detail, look)),
       loadSection(model, look),
-      ...(detail ? [groupSection('Melting', model.melt), groupSection('Gloss', model.gloss)] : []),
+      ...(detail
+        ? [groupSection('Melting', model.melt, look), groupSection('Gloss', model.gloss, look)]
+        : []),
       { heading: 'Mind', lines: notes.map((note) => point(note, look)) },
-      { lines: [writtenLine(writtenTo)] },
+      { lines: [wrapped(writtenLine(writtenTo), look)] },
     ],
     look,
   );
 }
 
-function fittedLines({ archive, melt, gloss }: Model, look: Look): string[] {
-  const loads = new Set(archive.tiles.filter(({ firing }) => firing).map(({ load }) => load)).size;
+function isNothingFitted({ archive }: Model): boolean {
+  return archive.counts.fitted === 0;
+}
+
+function fittedLines(model: Model, look: Look): string[] {
+  const { archive, melt, gloss } = model;
+  if (isNothingFitted(model)) return [wrapped('Nothing is fitted: no tile is judged.', look)];
   const text =
-    `Of the fitted tiles ${grouped(melt.tiles.no)} are underfired and ${grouped(melt.tiles.yes)} ` +
-    `melted; of the melted ${grouped(gloss.tiles.no)} are matte and ${grouped(gloss.tiles.yes)} gloss. ` +
-    `The archive names ${countOf(loads, 'load')}.`;
+    `Fitted: ${grouped(melt.tiles.no)} underfired, ${grouped(melt.tiles.yes)} melted; of the melted ` +
+    `${grouped(gloss.tiles.no)} matte, ${grouped(gloss.tiles.yes)} gloss. ` +
+    loadWords(archive);
   return [wrapped(text, look)];
+}
+
+/** From which loads the tiles are: those of one share its error. */
+function loadWords({ tiles }: Model['archive']): string {
+  const loads = new Set(tiles.flatMap(({ firing, load }) => (firing === undefined ? [] : [load])));
+  const alone = tiles.filter(({ firing }) => firing === undefined).length;
+  const named = `The tiles were fired in ${countOf(loads.size, 'load')}`;
+  if (tiles.length === 0) return 'There is no tile.';
+  if (loads.size === 0) return 'No tile names its firing: each counts as a load of its own.';
+  if (alone === 0) return `${named}.`;
+  return `${named}, and ${grouped(alone)} without a firing count as a load of their own each.`;
 }
 
 function leftOutNote(faults: readonly Fault[]): string[] {
@@ -58,18 +78,28 @@ function leftOutNote(faults: readonly Fault[]): string[] {
   return [`rows with faults were left out (${countOf(faults.length, 'fault')}; check lists them)`];
 }
 
-function groupSection(name: string, { groups, loadSd }: Stage): Section {
+function groupSection(
+  name: string,
+  { groups, residual, wrongVerdicts }: Stage,
+  { columns }: Look,
+): Section {
   const rows = groups.map(({ name: group, startSd, sd }) => [
     group,
     fixed(startSd, 2),
     fixed(sd, 2),
   ]);
   return {
-    heading: `${name}: sd of each group of weights, before and after the tiles`,
+    heading: `${name}: sd of each group, before and after the tiles`,
     lines: alignedLines({
-      rows: [['group', 'before', 'after'], ...rows, ['loads', '', fixed(loadSd, 2)]],
+      rows: [
+        ['group', 'before', 'after'],
+        ...rows,
+        ['smooth departure', fixed(residual.startSd, 2), fixed(residual.sd, 2)],
+        ['share of wrong verdicts', '', fixed(wrongVerdicts, 3)],
+      ],
       align: ['left', 'right', 'right'],
       indent: INDENT,
+      columns,
     }),
   };
 }

@@ -1,18 +1,21 @@
-import type { HeldOut, HeldOutPart, Validation } from '../model/model.ts';
+import type { HeldOut, Validation } from '../model/model.ts';
 import { alignedLines, type Align } from './aligned.ts';
 import { fixed, partPercent } from './figures.ts';
+import { groupNames, groupsTogether } from './group-words.ts';
 import { INDENT, prose, type Look, type Section } from './page.ts';
 import { cutTo, printable } from './printable.ts';
-import { grouped } from './sentences.ts';
+import { countOf, grouped, listOf } from './sentences.ts';
 
 /** The three accounts, in the order of their weight for the tool's own question. */
 const ACCOUNTS = [
-  ['byCone', 'one cone'],
-  ['byLoad', 'one load'],
-  ['byGlaze', 'one glaze'],
+  ['byCone', 'cone'],
+  ['byLoad', 'load'],
+  ['byGlaze', 'glaze'],
 ] as const satisfies readonly (readonly [keyof Validation, string])[];
 
 const WIDEST_NAME = 24;
+/** Of fewer tiles a share that is right is not even known to 11 % give or take (binomial, one sd). */
+const TELLING_TILES = 20;
 
 /**
  * How a model holds on tiles that it did not see, for the page of `fit`.
@@ -27,8 +30,9 @@ export function heldOutSections(validation: Validation, detail: boolean, look: L
     {
       heading: 'How it holds on tiles it did not see',
       lines: [
-        prose('Each part in turn is left out, the rest fitted anew, and the part predicted.', look),
-        ...overview(validation),
+        ...fewTilesNote(validation).map((note) => prose(`${note}.`, look)),
+        prose(groupWords(validation), look),
+        ...overview(validation, look),
         ...coneWords(validation.byCone, look),
         prose(
           'Log score: mean logarithm of the probability given to what was seen; 0 is perfect. Shares: ' +
@@ -37,33 +41,65 @@ export function heldOutSections(validation: Validation, detail: boolean, look: L
         ),
       ],
     },
-    ...shown.map(([account, leftOut]) => ({
-      heading: `Left out: ${leftOut} at a time`,
-      lines: partLines(validation[account].parts),
+    ...shown.map(([account, group]) => ({
+      heading: `Left out in turn, ${group} by ${group}`,
+      lines: partLines(validation[account], look),
     })),
     { heading: 'Is a stated probability kept?', lines: reliabilityLines(validation, look) },
   ];
 }
 
-function overview(validation: Validation): string[] {
-  const head = ['left out', 'tiles', 'parts', 'log score', 'shares', 'sure', 'of them right'];
-  const rows = ACCOUNTS.map(([account, leftOut]) => [
-    leftOut,
-    ...overviewCells(validation[account]),
-  ]);
+/**
+ * A caution where the tiles are too few for the account to mean much.
+ *
+ * @param validation - of the model
+ * @returns one sentence without its full stop, or none
+ */
+export function fewTilesNote(validation: Validation): string[] {
+  const tiles = Math.max(...ACCOUNTS.map(([account]) => validation[account].tiles));
+  if (tiles === 0 || tiles >= TELLING_TILES) return [];
+  return [
+    `${countOf(tiles, 'judged tile')}: so few say almost nothing about how the model holds; judge by it ` +
+      `from about ${TELLING_TILES} tiles on`,
+  ];
+}
+
+/** What is left out together, as a potter would say it. */
+function groupWords({ byLoad, byGlaze }: Validation): string {
+  const [loads, glazes] = [groupsTogether(byLoad), groupsTogether(byGlaze)];
+  const together = [
+    ...(loads === undefined
+      ? []
+      : [`the ${grouped(loads)} loads in ${grouped(byLoad.folds)} lots`]),
+    ...(glazes === undefined
+      ? []
+      : [`the ${grouped(glazes)} glazes in ${grouped(byGlaze.folds)} lots`]),
+  ];
+  const lots = together.length === 0 ? '' : ` To save time, ${listOf(together)}.`;
+  return (
+    'A group of tiles is left out, the rest fitted anew and the group predicted; then the next one, ' +
+    'until each tile was left out once. A group: all tiles of a cone (6.5 counts to 7), of a load, or ' +
+    `of a glaze (a recipe, a formula or a blend).${lots}`
+  );
+}
+
+function overview(validation: Validation, { columns }: Look): string[] {
+  const head = ['left out by', 'groups', 'tiles', 'log score', 'shares', 'sure', 'of them right'];
+  const rows = ACCOUNTS.map(([account, group]) => [group, ...overviewCells(validation[account])]);
   return alignedLines({
     rows: [head, ...rows],
     align: ['left', ...head.slice(1).map((): Align => 'right')],
     indent: INDENT,
+    columns,
   });
 }
 
 function overviewCells({ tiles, folds, logScore, baseRateLogScore, sure }: HeldOut): string[] {
-  if (folds === 0) return ['cannot be tested'];
+  if (folds === 0) return ['-'];
   const { called, right } = sure;
   const share = called === 0 ? '-' : `${grouped(right)} (${partPercent(right, called)})`;
   const scores = [fixed(logScore, 2), fixed(baseRateLogScore, 2)];
-  return [grouped(tiles), grouped(folds), ...scores, grouped(called), share];
+  return [grouped(folds), grouped(tiles), ...scores, grouped(called), share];
 }
 
 /** The account by cone in words: it is what the tool is asked. */
@@ -92,10 +128,12 @@ function coneWords({ folds, logScore, baseRateLogScore, sure }: HeldOut, look: L
   ];
 }
 
-function partLines(parts: readonly HeldOutPart[]): string[] {
+function partLines(account: HeldOut, { columns }: Look): string[] {
+  const { parts } = account;
   if (parts.length === 0) return [];
-  const rows = parts.map(({ leftOut, tiles, logScore, baseRateLogScore }) => [
-    cutTo(printable(leftOut), WIDEST_NAME),
+  const names = groupNames(account);
+  const rows = parts.map(({ tiles, logScore, baseRateLogScore }, i) => [
+    cutTo(printable(names[i] ?? ''), WIDEST_NAME),
     grouped(tiles),
     fixed(logScore, 2),
     fixed(baseRateLogScore, 2),
@@ -104,6 +142,7 @@ function partLines(parts: readonly HeldOutPart[]): string[] {
     rows: [['left out', 'tiles', 'log score', 'shares'], ...rows],
     align: ['left', 'right', 'right', 'right'],
     indent: INDENT,
+    columns,
   });
 }
 
@@ -111,13 +150,15 @@ function reliabilityLines(validation: Validation, look: Look): string[] {
   const tested = ACCOUNTS.filter(([account]) => validation[account].folds > 0);
   const [first] = tested;
   if (first === undefined) return [];
-  const head = ['stated', ...tested.map(([, leftOut]) => `${leftOut} out`)];
+  const head = ['stated', ...tested.map(([, group]) => `by ${group}`)];
   const rows = validation[first[0]].reliability.map(({ from, to }, row) => [
     `${Math.round(100 * from)} to ${Math.round(100 * to)} %`,
     ...tested.map(([account]) => reliabilityCell(validation[account], row)),
   ]);
   const about = 'Tiles that were right, by the probability stated for the likeliest surface.';
-  return [prose(about, look), ...alignedLines({ rows: [head, ...rows], indent: INDENT, gap: 3 })];
+  const { columns } = look;
+  const table = alignedLines({ rows: [head, ...rows], indent: INDENT, gap: 3, columns });
+  return [prose(about, look), ...table];
 }
 
 function reliabilityCell({ reliability }: HeldOut, row: number): string {

@@ -29,7 +29,10 @@ export function kilnSections(
     ...kilns.map((kiln) => kilnSection(kiln, tiles, look)),
     {
       heading: kilns.length === 0 ? 'Loads' : 'Other loads',
-      lines: [...otherLines(others), ...(tilesWithoutFiring === 0 ? [] : [prose(apart, look)])],
+      lines: [
+        ...otherLines(others, look),
+        ...(tilesWithoutFiring === 0 ? [] : [prose(apart, look)]),
+      ],
     },
   ];
 }
@@ -47,7 +50,7 @@ function kilnSection(
   return {
     heading: `${name}: ${countOf(firings.length, 'load')}`,
     lines: [
-      ...alignedLines({ rows: [head, ...rows], align, indent: INDENT }),
+      ...alignedLines({ rows: [head, ...rows], align, indent: INDENT, columns: look.columns }),
       ...kilnWords(account).map((words) => prose(words, look)),
     ],
   };
@@ -71,7 +74,7 @@ function tileCells(tiles: ReadonlyMap<string, LoadTiles>, { firing }: KilnFiring
   return own === undefined ? VERDICT_HEADINGS.map(() => '.') : verdictCells(own.tiles);
 }
 
-function kilnWords({ kiln, lessSet, shelves, trend, firings }: KilnAccount): string[] {
+function kilnWords({ kiln, lessSet, shelves, trend, firings, isDated }: KilnAccount): string[] {
   if (kiln === null) return [];
   const read = firings.filter(({ readings }) => readings.length > 0).length;
   const standing =
@@ -81,7 +84,8 @@ function kilnWords({ kiln, lessSet, shelves, trend, firings }: KilnAccount): str
           `In the middle of its loads it reads ${offWords(lessSet)} (witness cones in ` +
             `${read} of ${countOf(firings.length, 'load')}; off: middle reading less set cone).`,
         ];
-  return [...standing, ...shelfWords(shelves), ...(trend === null ? [] : [trendWords(trend)])];
+  const moves = trend === null ? [] : [trendWords(trend, isDated)];
+  return [...standing, ...shelfWords(shelves), ...moves];
 }
 
 function offWords(cones: number): string {
@@ -100,15 +104,17 @@ function shelfWords(shelves: KilnAccount['shelves']): string[] {
 /** Below this a firing moves less than a hundredth of a cone: even. */
 const EVEN_CONES = 0.005;
 
-function trendWords({ conesPerFiring, firings, readings }: KilnTrend): string {
-  const basis = `(Theil-Sen slope of ${countOf(readings, 'reading')} in ${countOf(firings, 'load')})`;
+function trendWords({ conesPerFiring, firings, readings }: KilnTrend, isDated: boolean): string {
+  const order = isDated ? '' : ', taken by name: not all have a date';
+  const read = `${countOf(readings, 'reading')} in ${countOf(firings, 'load')}`;
+  const basis = `(Theil-Sen slope of ${read}${order})`;
   if (Math.abs(conesPerFiring) < EVEN_CONES)
     return `It reads the same from firing to firing ${basis}.`;
   const side = conesPerFiring < 0 ? 'cooler' : 'warmer';
   return `It reads ${fixed(Math.abs(conesPerFiring), 2)} cone ${side} with each firing ${basis}.`;
 }
 
-function otherLines(loads: readonly LoadTiles[]): string[] {
+function otherLines(loads: readonly LoadTiles[], { columns }: Look): string[] {
   if (loads.length === 0) return [];
   const rows = loads.map(({ load, tiles }) => {
     return [cutTo(printable(load), 2 * WIDEST_NAME), ...verdictCells(tiles)];
@@ -117,6 +123,7 @@ function otherLines(loads: readonly LoadTiles[]): string[] {
     rows: [['load', ...VERDICT_HEADINGS], ...rows],
     align: ['left', ...rightOf(VERDICT_HEADINGS)],
     indent: INDENT,
+    columns,
   });
 }
 

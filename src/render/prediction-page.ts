@@ -3,7 +3,7 @@ import { cautionSection, readingSection } from './answer-sections.ts';
 import { compositionWords } from './composition-words.ts';
 import { coneNotes, coneTable, nearestLines } from './cone-table.ts';
 import { pageOf, prose, type Look, type Section } from './page.ts';
-import { printable } from './printable.ts';
+import { cutTo, printable } from './printable.ts';
 
 /**
  * The page of `predict`: a table for each glaze.
@@ -30,9 +30,9 @@ function pointSection(
   answers: readonly Prediction[],
   look: Look,
 ): Section {
-  const { head, rows } = coneTable(answers);
+  const { head, rows } = coneTable(answers, look);
   return {
-    heading: printable(point),
+    heading: cutTo(printable(point), look.columns),
     lines: [
       prose(compositionWords(unity), look),
       head,

@@ -4,7 +4,7 @@ import { compositionWords } from './composition-words.ts';
 import { coneNotes, coneTable, nearestLines, nearTileWords } from './cone-table.ts';
 import { coneTenths, percentDigits, placeRange } from './figures.ts';
 import { pageOf, point, prose, type Look, type Section } from './page.ts';
-import { printable } from './printable.ts';
+import { cutTo, printable } from './printable.ts';
 import { countOf } from './sentences.ts';
 import { wrapped } from './wrapped.ts';
 
@@ -28,7 +28,7 @@ export function shiftPage({ model, points }: Shift, look: Look): string {
 function pointSection(shifted: PointShift, look: Look): Section {
   const { point: name, unity, cones, words } = shifted;
   return {
-    heading: printable(name),
+    heading: cutTo(printable(name), look.columns),
     lines: [
       prose(compositionWords(unity), look),
       ...tableWithTurns(shifted, look),
@@ -43,7 +43,7 @@ function pointSection(shifted: PointShift, look: Look): Section {
 
 /** The table of cones, each turn between the rows where it happens. */
 function tableWithTurns({ cones, turns, lookedAt }: PointShift, look: Look): string[] {
-  const { head, rows } = coneTable(cones);
+  const { head, rows } = coneTable(cones, look);
   const between = (low: number, high: number) =>
     turns
       .filter(({ coneIndex }) => coneIndex > low && coneIndex <= high)

@@ -33,7 +33,7 @@ export function unityPage(recipes: readonly RecipeUnity[], look: Look): string {
   const others = OTHERS.filter((oxide) => isHeld(recipes, oxide));
   return pageOf(
     [
-      { heading: 'Glass formers, moles per mole of flux', lines: glassLines(recipes) },
+      { heading: 'Glass formers, moles per mole of flux', lines: glassLines(recipes, look) },
       { heading: 'Fluxes, which sum to 1', lines: oxideLines(recipes, fluxes, look) },
       { heading: 'Iron, colourants, opacifiers', lines: oxideLines(recipes, others, look) },
       hazardSection(recipes, look),
@@ -50,7 +50,7 @@ function isHeld(recipes: readonly RecipeUnity[], oxide: Oxide): boolean {
   return recipes.some(({ unity }) => (unity[oxide] ?? 0) > 0);
 }
 
-function glassLines(recipes: readonly RecipeUnity[]): string[] {
+function glassLines(recipes: readonly RecipeUnity[], { columns }: Look): string[] {
   const head = ['recipe', ...GLASS, 'SiO2:Al2O3', 'alkali share'];
   const rows = recipes.map(({ recipe, unity }) => [
     nameCell(recipe),
@@ -58,7 +58,7 @@ function glassLines(recipes: readonly RecipeUnity[]): string[] {
     fixed(silicaToAlumina(unity), 1),
     fixed(alkaliShare(unity), 2),
   ]);
-  return alignedLines({ rows: [head, ...rows], align: rightBut(head), indent: INDENT });
+  return alignedLines({ rows: [head, ...rows], align: rightBut(head), indent: INDENT, columns });
 }
 
 /** Columns of one oxide take five figures and two spaces. */

@@ -35,6 +35,26 @@ describe('readTable', () => {
     expect(tableOf(text).separator).toBe(separator);
   });
 
+  it.each([
+    ['sep=;\na;b,c\n1;2,5\n', ';', 'sep=;'],
+    ['sep=,\r\na,b;c;d\r\n1,2\r\n', ',', 'sep=,'],
+    ['"sep=;"\na;b\n1;2\n', ';', '"sep=;"'],
+    ['SEP=\t\na\tb\n1\t2\n', '\t', 'SEP='],
+    ['sep=;;;\na;b;c;d\n1;2\n', ';', 'sep=;;;'],
+  ])('takes the separator that a first line tells: %j', (text, separator, separatorLine) => {
+    const table = tableOf(text);
+    expect(table).toMatchObject({ separator, separatorLine, headingLine: 2 });
+    expect(table.headings[0]).toBe('a');
+    expect(table.rows.map(({ line }) => line)).toEqual([3]);
+  });
+
+  it('does not take a heading for such a line, nor a sign that separates nothing', () => {
+    expect(tableOf('sep,b\n1,2\n').separatorLine).toBeUndefined();
+    expect(tableOf('tile\nsep=;\n').rows).toHaveLength(1);
+    const message = 'expected sep= with a comma, semicolon or tab, got "sep=|"';
+    expect(readTable('a.csv', bytesOf('sep=|\na|b\n'))).toMatchObject({ fault: { message } });
+  });
+
   it.each(['', '\n \n', ' ,,\n'])('an empty file is a fault: %j', (text) => {
     const message = 'expected a line of headings, got an empty file';
     const fault = { file: 'a.csv', line: 0, column: '', message };

@@ -2,7 +2,9 @@ import { describe, expect, it } from 'vitest';
 import { readTable } from '../../src/archive/csv-table.ts';
 import { mapHeadings } from '../../src/archive/headings.ts';
 import { OXIDES } from '../../src/chemistry/oxides.ts';
-import { bytesOf } from '../support/builders.ts';
+import { readArchive } from '../../src/archive/read-archive.ts';
+import { faultLine } from '../../src/errors.ts';
+import { bytesOf, filesOf } from '../support/builders.ts';
 
 const KNOWN = ['tile', 'recipe', ...OXIDES, 'firing', 'cone', 'surface', 'thickness_mm', 'note'];
 const map = (headings: string, known: readonly string[] = KNOWN) => {
@@ -78,9 +80,25 @@ describe('mapHeadings', () => {
     }
   });
 
+  it('says what a faulty heading stands for, so that it is not missing as well', () => {
+    expect([...map('tile,Al203,SiO2 %').meant]).toEqual(['Al2O3', 'SiO2']);
+    expect([...map('tile,colour').meant]).toEqual([]);
+  });
+
   it('bounds the length of a heading', () => {
     expect(map('x'.repeat(201)).faults[0]?.message).toBe(
       'expected a heading of at most 200 characters, got 201',
     );
+  });
+});
+
+describe('a misspelt heading beside one that is missing', () => {
+  it('hides nothing: both faults come at once', () => {
+    const csv = 'tile,cone,Finish,SiO2,Al203,CaO\nA,6,gloss,3,0.4,1\n';
+    const { faults } = readArchive(filesOf({ 'a.csv': csv }));
+    expect(faults.filter(({ line }) => line === 1).map(faultLine)).toEqual([
+      'a.csv:1 Al203: expected a known column, got "Al203"; nearest known: Al2O3',
+      'a.csv:1 surface: expected this column, found none',
+    ]);
   });
 });

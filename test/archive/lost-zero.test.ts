@@ -1,7 +1,8 @@
 import { describe, expect, it } from 'vitest';
-import { lostZero } from '../../src/archive/lost-zero.ts';
+import { lostZero, peakMisfit } from '../../src/archive/lost-zero.ts';
 import { coneIndex } from '../../src/firing/cone.ts';
 import { endPointC } from '../../src/firing/end-points.ts';
+import { publishedTable } from '../reference/chemistry-tables.ts';
 
 describe('endPointC', () => {
   // Source: Edward Orton Jr. Ceramic Foundation, self-supporting cones at 60 degrees C an hour
@@ -50,12 +51,43 @@ describe('lostZero', () => {
     ['6', 1222],
     ['6', 1185], // 15 degrees C an hour, verified
     ['6', 1111],
+    ['6', 1100], // fits neither: what was meant cannot be known
+    ['6', 700],
     ['06', 998],
     ['06', 1222],
     ['1', 1109], // 15 degrees C an hour, verified: nearer to the end point of 01, and right
+    ['2', 1100], // a slow firing to 2 or a fast one to 02
     ['0.5', 1119],
     ['25', 1400],
   ])('leaves cone %s at %i °C alone', (cone, peakC) => {
     expect(lostZero(cone, peakC)).toBeUndefined();
+  });
+});
+
+describe('peakMisfit', () => {
+  it.each([
+    ['6', 1150, 1222, '3'],
+    ['6', 1300, 1222, '11'],
+    ['6', 1100, 1222, '02'],
+    ['6', 700, 1222, '018'],
+    ['06', 1222, 998, '6'],
+    ['06', 700, 998, '018'],
+    ['25', 1222, 1365, '6'],
+  ])('cone %s does not go with %i °C', (cone, peakC, usualC, nearestCone) => {
+    expect(peakMisfit(cone, peakC)).toEqual({ usualC, nearestCone });
+  });
+
+  it('is none at any rate of heating that the chart knows, at any of its cones', () => {
+    const rows = publishedTable('cone-temperatures.csv').filter(
+      ({ series }) => series === 'self_supporting',
+    );
+    expect(rows).toHaveLength(111);
+    for (const row of rows) {
+      expect(peakMisfit(row['cone'], Number(row['temperature_C']))).toBeUndefined();
+    }
+  });
+
+  it('is none above a cone beyond the chart', () => {
+    expect(peakMisfit('25', 1400)).toBeUndefined();
   });
 });

@@ -40,6 +40,7 @@ describe('one CSV alone', () => {
       ['F', 'unjudged', undefined, 'tile F'],
     ]);
     expect(archive.notes).toEqual([
+      'my tiles.csv: no B2O3 column: read as 0 for all 7 tiles given by oxides',
       '1 semi-matte tile counted as matte',
       '6 tiles without a firing: each counts as a load of its own',
       '2 tiles not judged yet: kept, not fitted',
@@ -73,7 +74,7 @@ describe('one CSV alone', () => {
       ...Array.from({ length: 6 }, () => 'underfired'),
       'gloss',
     ]);
-    expect(archive.notes[0]).toBe(
+    expect(archive.notes[1]).toBe(
       '5 tiles counted as underfired for an unmelted drip: ' +
         '"T1" (gloss), "T2" (matte), "T4" (not judged), "T5" (overfired) and "T6" (melted)',
     );
@@ -214,9 +215,11 @@ describe('faults of headings and files', () => {
     expect(faults.map(faultLine)).toEqual([
       't.csv:1 surfce: expected a known column, got "surfce"; nearest known: surface',
       't.csv:1 CaO: expected each column once, got it in columns 3 and 6',
+      't.csv:1 Al2O3: expected this column beside the other oxides, found none',
+      't.csv:2 tile: expected each tile once, got "A" in line 4 as well',
       't.csv:3 SiO2: expected moles of SiO2: a number, got "x"',
       't.csv:3 cone: expected a cone from 022 to 42 such as 6, 06 or 6.5, got "six"',
-      't.csv:4 tile: expected each tile once, got "A" as in line 2',
+      't.csv:4 tile: expected each tile once, got "A" in line 2 as well',
     ]);
     expect(archive.counts).toEqual({ read: 3, fitted: 0, unjudged: 0, setAside: 0, refused: 3 });
   });

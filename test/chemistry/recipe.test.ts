@@ -44,6 +44,14 @@ describe('recipeUnity', () => {
     );
   });
 
+  it('does not depend on the order of the lines, to the last bit', () => {
+    fc.assert(
+      fc.property(recipes, (lines) => {
+        expect(recipeUnity([...lines].reverse())).toStrictEqual(recipeUnity(lines));
+      }),
+    );
+  });
+
   it('does not depend on the unit of the parts', () => {
     const factor = fc.double({ min: 1e-6, max: 1e6, noNaN: true });
     fc.assert(

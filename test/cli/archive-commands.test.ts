@@ -130,6 +130,44 @@ describe('coneshift fit', () => {
     expect(err).toContain('--leave-out-faulty');
   });
 
+  it('tells the same faults as JSON, where JSON was asked for', async () => {
+    const { exitCode, out, err } = await called(['fit', 's', '--json'], { files: FAULTY });
+    expect(exitCode).toBe(3);
+    expect(err).toContain('2 faults in the input');
+    expect(json(out)).toMatchObject({
+      schema: 'coneshift.fit/1',
+      counts: { read: 6, fitted: 3, unjudged: 1, setAside: 0, refused: 2 },
+      faults: [
+        { line: 6, column: 'firing' },
+        { line: 7, column: 'surface' },
+      ],
+    });
+    expect(json(out)).not.toHaveProperty('validation');
+  });
+
+  it('says what puts the compositions in doubt, on the page and in the JSON', async () => {
+    const files = { 'x.csv': 'tile,SiO2,Al2O3,K2O,CaO,cone,surface\nB,3,0.4,0.2,0.8,6,gloss\n' };
+    const note = 'x.csv: no B2O3 column: read as 0 for the 1 tile given by oxides';
+    const page = await called(['fit', 'x.csv'], { files });
+    expect(page.out.replace(/\s+/g, ' ')).toContain(note);
+    const { out } = await called(['fit', 'x.csv', '--json'], { files });
+    expect(json(out)['notes']).toContain(note);
+    const check = await called(['check', 'x.csv'], { files });
+    expect(check.out.replace(/\s+/g, ' ')).toContain(note);
+  });
+
+  it('needs no judged tile at all, so that it does not end with 4', async () => {
+    const files = { 'x.csv': 'tile,SiO2,Al2O3,K2O,CaO,cone,surface\n' };
+    expect((await called(['fit', 'x.csv'], { files })).exitCode).toBe(0);
+  });
+
+  it('looks for the folder of the model before the work, and tells its whole path', async () => {
+    const argv = ['fit', 's', '--out', 'no/such/m.json'];
+    const { exitCode, err } = await called(argv, { files: STUDIO });
+    expect(exitCode).toBe(3);
+    expect(err.replace(/\s+/g, ' ')).toContain('"no/such/m.json" in, found none at "no/such"');
+  });
+
   it('goes on without them when told to, counts them and names them', async () => {
     const argv = ['fit', 's', '--leave-out-faulty'];
     const { exitCode, out, err } = await called(argv, { files: FAULTY });
@@ -168,6 +206,15 @@ describe('coneshift fit', () => {
 });
 
 describe('coneshift unity', () => {
+  it('does not depend on the order of the rows', async () => {
+    const [head = '', ...rows] = STUDIO['s/recipes.csv'].trimEnd().split('\n');
+    const turned = [head, ...rows.reverse(), ''].join('\n');
+    const once = await called(['unity', 's'], { files: STUDIO });
+    const again = await called(['unity', 's'], { files: { ...STUDIO, 's/recipes.csv': turned } });
+    expect(once.out).toMatch(/Clear[^]*Stiff/);
+    expect(again.out).toBe(once.out);
+  });
+
   it('gives all recipes, or the named ones in the order asked', async () => {
     const all = json((await called(['unity', 's', '--json'], { files: STUDIO })).out);
     expect(all['schema']).toBe('coneshift.unity/1');
@@ -196,7 +243,7 @@ describe('coneshift unity', () => {
   it('advises on a misspelt name, and on an archive without recipes', async () => {
     const { exitCode, err } = await called(['unity', 's', 'Claer'], { files: STUDIO });
     expect([exitCode, err]).toEqual([
-      3,
+      2,
       'coneshift: expected a recipe, got "Claer"; nearest known: "Clear"\n',
     ]);
     const files = { 'x.csv': 'tile,SiO2,Al2O3,CaO,cone,surface\nB,3,0.4,1,6,gloss\n' };

@@ -62,11 +62,29 @@ describe('the built program', () => {
     expect(missing.status).toBe(3);
     expect(missing.stderr.replace(/\s+/g, ' ')).toContain('there is no such file or folder');
     const nowhere = start(['fit', DEMO, '--out', 'no/such/folder/m.json']);
-    expect(nowhere.status).toBe(2);
-    expect(nowhere.stderr).toContain('there is no such file or folder');
+    expect(nowhere.status).toBe(3);
+    expect(nowhere.stderr.replace(/\s+/g, ' ')).toContain('"no/such/folder/m.json"');
     writeFileSync(join(folder, 'notes.md'), 'mine');
     expect(start(['fit', DEMO, '--out', 'notes.md']).status).toBe(2);
     expect(readFileSync(join(folder, 'notes.md'), 'utf8')).toBe('mine');
+  });
+
+  it('ends with 3 where a model cannot be written, and names the file whole', () => {
+    // Short enough to be looked for, too long for the file that is written beside it first.
+    const name = `${'m'.repeat(245)}.json`;
+    const { status, stderr } = start(['fit', DEMO, '--out', name]);
+    expect(status).toBe(3);
+    expect(stderr).toContain(`"${name}"`);
+    expect(readdirSync(folder)).not.toContain(name);
+  });
+
+  it('is as wide as COLUMNS says where there is no terminal', () => {
+    const widest = (text: string) => Math.max(...text.split('\n').map((line) => line.length));
+    expect(widest(start(['unity', DEMO], { env: { COLUMNS: '60' } }).stdout)).toBeLessThanOrEqual(
+      60,
+    );
+    const odd = start(['unity', DEMO], { env: { COLUMNS: 'wide' } }).stdout;
+    expect(odd).toBe(start(['unity', DEMO]).stdout);
   });
 
   it('writes no terminal codes into a pipe, and honours NO_COLOR', () => {

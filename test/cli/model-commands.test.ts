@@ -26,7 +26,7 @@ beforeAll(() => {
     ...ARCHIVE,
     'm.json': modelText({ ...bare, archive: { ...bare.archive, recipes } }),
     'bare.json': modelText(bare),
-    'points.csv': 'point,SiO2,Al2O3,CaO\nP0,3,0.4,1\nP1,6,0.8,2\n',
+    'points.csv': 'point,SiO2,Al2O3,B2O3,K2O,CaO\nP0,3,0.4,0,0,1\nP1,6,0.8,0,0,2\n',
   };
 });
 
@@ -112,9 +112,9 @@ describe('coneshift predict', () => {
     [['m.json', '--cone', 'six', '--glaze', CLEAR_TEXT], 2, 'expected a cone from 022 to 42'],
     [['m.json', '--cone', '-6', '--glaze', CLEAR_TEXT], 2, 'expected a cone from 022 to 42'],
     [['--cone', '6'], 2, "missing required argument 'model'"],
-    [['m.json', '--cone', '6', '--glaze', 'SiO2=3 Al203=0.4'], 3, 'nearest known: "Al2O3"'],
-    [['m.json', '--cone', '6', '--recipe', 'Claer'], 3, 'nearest known: "Clear"'],
-    [['bare.json', '--cone', '6', '--recipe', 'Clear'], 3, 'expected recipes in the model'],
+    [['m.json', '--cone', '6', '--glaze', 'SiO2=3 Al203=0.4'], 2, 'nearest known: "Al2O3"'],
+    [['m.json', '--cone', '6', '--recipe', 'Claer'], 2, 'nearest known: "Clear"'],
+    [['bare.json', '--cone', '6', '--recipe', 'Clear'], 2, 'expected recipes in the model'],
     [['none.json', '--cone', '6', '--recipe', 'Clear'], 3, 'none.json'],
     [['points.csv', '--cone', '6', '--recipe', 'Clear'], 3, 'expected a model file'],
     [['m.json', '--cone', '6', '--points', 'm.json'], 3, 'm.json'],

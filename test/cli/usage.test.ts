@@ -26,6 +26,16 @@ describe('help', () => {
     expect(out.split('\n').filter((line) => line.length > 80)).toEqual([]);
   });
 
+  it('says what each exit code means, and what fit ends with', async () => {
+    const all = (await called(['--help'])).out.replace(/\s+/g, ' ');
+    expect(all).toContain('0 done; 1 a bug; 2 usage');
+    expect(all).toContain(
+      '3 a file or folder that cannot be read or written, or has faults; 4 cannot be',
+    );
+    const fit = (await called(['fit', '--help'])).out.replace(/\s+/g, ' ');
+    expect(fit).toContain('4 is kept for what cannot be fitted');
+  });
+
   it('tells the version', async () => {
     expect(await called(['--version'])).toEqual({ exitCode: 0, out: '0.0.0-test\n', err: '' });
   });

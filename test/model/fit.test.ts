@@ -2,9 +2,9 @@ import { describe, expect, it } from 'vitest';
 import type { Tile } from '../../src/archive/archive.ts';
 import { foldsByLoad } from '../../src/model/folds.ts';
 import { fitModel, fitUnvalidated } from '../../src/model/fit.ts';
-import { stageLogOdds, surfaceProbability } from '../../src/model/log-odds.ts';
+import { newLoadProbability } from '../../src/model/log-odds.ts';
 import { SURFACES, type Surface } from '../../src/model/model.ts';
-import { fitStages, isJudged, stageOf } from '../../src/model/stages.ts';
+import { fitStages, fittedStages, fitWithout, isJudged } from '../../src/model/stages.ts';
 import { aHeat, anArchive, aTile } from '../support/builders.ts';
 import { inventedTiles } from '../support/invented-tiles.ts';
 
@@ -30,9 +30,9 @@ describe('fitModel', () => {
 
   it('lists loads that have a firing, and leaves out those of single unnamed tiles', () => {
     const unnamed = aTile({ tile: 'alone', verdict: 'gloss' });
-    const { melt } = fitUnvalidated(anArchive([...tiles, unnamed]));
-    expect(melt.loads.map(({ load }) => load)).toEqual(['L0', 'L1', 'L2', 'L3']);
-    expect(melt.loads.map((load) => load.tiles)).toEqual([20, 20, 20, 20]);
+    const { loads } = fitUnvalidated(anArchive([...tiles, unnamed]));
+    expect(loads.map(({ load }) => load)).toEqual(['L0', 'L1', 'L2', 'L3']);
+    expect(loads.map((load) => load.tiles)).toEqual([20, 20, 20, 20]);
   });
 
   it('lets overfired and unjudged tiles change nothing but the archive', () => {
@@ -72,11 +72,11 @@ describe('notes of a fit', () => {
     expect(notesOf(tiles)).not.toMatch(/no judged tile|of one cone/);
   });
 
-  it('without any tile name all of it, and what no tile can tell', () => {
+  it('without any tile say that nothing is learnt, and nothing else', () => {
     const { notes, validation } = fitModel(anArchive());
-    expect(notes.filter((note) => note.includes('fewer than'))).toHaveLength(4);
-    expect(notes.filter((note) => note.includes('no judged tile at cone'))).toHaveLength(3);
-    expect(notes.at(-1)).toContain('an error that all loads share');
+    expect(notes).toEqual([
+      'no judged tile: every answer is what is usual elsewhere, and nothing in it comes from this studio',
+    ]);
     for (const held of [validation.byCone, validation.byLoad, validation.byGlaze]) {
       expect(held).toMatchObject({ folds: 0, tiles: 0, logScore: null, baseRateLogScore: null });
       expect(held.reliability.every((row) => row.tiles === 0 && row.stated === null)).toBe(true);
@@ -87,15 +87,11 @@ describe('notes of a fit', () => {
 describe('the account by load', () => {
   const judged = tiles.filter(isJudged);
   const account = fitModel(anArchive(tiles)).validation.byLoad;
+  const whole = fitStages(judged);
   const predictions = foldsByLoad(judged).flatMap((fold) => {
-    const refit = fitStages(judged.filter((tile) => !fold.tiles.includes(tile)));
-    const melt = stageOf('melt', refit.melt, new Set());
-    const gloss = stageOf('gloss', refit.gloss, new Set());
+    const refit = fittedStages(fitWithout(whole, new Set(fold.tiles)), new Set());
     return fold.tiles.map(({ unity, heat, verdict }) => {
-      const p = surfaceProbability(
-        stageLogOdds(melt, unity, heat.coneIndex, melt.loadSd),
-        stageLogOdds(gloss, unity, heat.coneIndex, gloss.loadSd),
-      );
+      const p = newLoadProbability(refit, unity, heat.coneIndex);
       const called = SURFACES.reduce<Surface>((a, b) => (p[b] > p[a] ? b : a), 'underfired');
       return { stated: p[called], isRight: called === verdict, own: p[verdict as Surface] };
     });
@@ -103,7 +99,7 @@ describe('the account by load', () => {
 
   it('has the score, the sure ones and the reliability of its predictions, counted again', () => {
     const score = predictions.reduce((sum, { own }) => sum + Math.log(own), 0) / 80;
-    expect(account.logScore).toBeCloseTo(score, 4);
+    expect(account.logScore).toBeCloseTo(score, 12);
     const sure = predictions.filter(({ stated }) => stated >= 0.9);
     expect(account.sure).toEqual({
       called: sure.length,

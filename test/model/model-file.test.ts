@@ -43,8 +43,8 @@ it('keeps columns with the names of object internals as data', () => {
 });
 
 it('is refused by the writer if a number is not finite', () => {
-  const broken: Model = { ...model, melt: { ...model.melt, loadSd: Number.NaN } };
-  expect(() => modelText(broken)).toThrow('finite numbers only, loadSd is NaN');
+  const broken: Model = { ...model, logEvidence: Number.NaN };
+  expect(() => modelText(broken)).toThrow('finite numbers only, logEvidence is NaN');
 });
 
 describe('a file that is no model', () => {
@@ -70,7 +70,7 @@ describe('a file that is no model', () => {
 describe('a damaged model', () => {
   const damages: readonly (readonly [string, string, string])[] = [
     ['an unknown key', changed((d) => Object.assign(d, { run: 'x' })), 'Unrecognized key: "run"'],
-    ['a number turned null', text.replace('"loadSd":', '"loadSd":null,"x":'), 'melt.loadSd'],
+    ['a number turned null', text.replace('"sd":', '"sd":null,"x":'), 'melt.groups.0.sd'],
     ['a fingerprint', text.replace('sha256:', 'sha1:'), 'archive.fingerprint: expected sha256'],
     [
       'an unknown oxide',
@@ -91,12 +91,27 @@ describe('a damaged model', () => {
     [
       'a weight too few',
       changed((d) => (d as Data)['gloss']['mean'].pop()),
-      'expected 20 numbers, got 19',
+      `gloss.mean: expected ${model.gloss.mean.length} numbers, got ${model.gloss.mean.length - 1}`,
     ],
     [
       'a covariance cell too few',
       changed((d) => (d as Data)['melt']['covarianceLower'].pop()),
-      'expected 276 numbers, got 275',
+      `expected ${model.melt.covarianceLower.length} numbers, got`,
+    ],
+    [
+      'a centre with a number too few',
+      changed((d) => {
+        const radial = (d as Data)['melt']['radial'] as unknown as { centres: number[][] };
+        radial.centres[0].pop();
+      }),
+      'melt.radial.centres.0: expected 7 numbers, got 6',
+    ],
+    [
+      'a weight changed by hand',
+      changed((d) => {
+        (d as Data)['melt']['mean'][1] = -3;
+      }),
+      'it was changed after it was written',
     ],
     [
       'a covariance that is none',

@@ -1,19 +1,18 @@
-import { CholeskyDecomposition, Matrix } from 'ml-matrix';
 import { describe, expect, it } from 'vitest';
 import { OXIDES } from '../../src/chemistry/oxides.ts';
 import type { Unity } from '../../src/chemistry/unity.ts';
 import { fitUnvalidated } from '../../src/model/fit.ts';
-import { columnValues, scaledInputs } from '../../src/model/inputs.ts';
-import { surfaceProbability, type StageWeights } from '../../src/model/log-odds.ts';
+import { surfaceProbability } from '../../src/model/log-odds.ts';
 import { SURFACES, type Surface } from '../../src/model/model.ts';
 import { sigmoid } from '../../src/numeric/logistic.ts';
-import { seededGenerator, type Generator } from '../../src/numeric/random.ts';
+import { seededGenerator } from '../../src/numeric/random.ts';
 import type { Point, Turn } from '../../src/predict/answers.ts';
 import { boundaries } from '../../src/predict/boundaries.ts';
 import { experienceOf, squaredSteps, surroundings } from '../../src/predict/experience.ts';
 import { predict, surfaceIntervals } from '../../src/predict/predict.ts';
 import { shift } from '../../src/predict/shift.ts';
 import { aHeat, anArchive, aTile } from '../support/builders.ts';
+import { denseDraws } from '../support/dense-draws.ts';
 import { drawnUnity, inventedTiles } from '../support/invented-tiles.ts';
 
 const tiles = inventedTiles({ tiles: 140, seed: 41 });
@@ -116,36 +115,6 @@ it.each(OXIDES)('support falls to outside with far more %s than any tile holds',
   expect(supportAt(asked)).toBe('outside');
 });
 
-/** Draws of a stage's log-odds along cones, from its mean and covariance by another library. */
-function drawnPaths(
-  { columns, mean, covarianceLower }: StageWeights,
-  { normal }: Generator,
-  unity: Unity,
-  cones: readonly number[],
-  count: number,
-): number[][] {
-  const size = columns.length;
-  const cell = (i: number, j: number) => covarianceLower[(i * (i + 1)) / 2 + j];
-  const covariance = Matrix.zeros(size, size);
-  for (let i = 0; i < size; i++) {
-    for (let j = 0; j <= i; j++) {
-      covariance.set(i, j, cell(i, j));
-      covariance.set(j, i, cell(i, j));
-    }
-  }
-  const factor = new CholeskyDecomposition(covariance).lowerTriangularMatrix;
-  const rows = new Matrix(cones.map((cone) => columnValues(scaledInputs(unity, cone), columns)));
-  const toPath = rows.mmul(factor);
-  const centre = rows.mmul(Matrix.columnVector([...mean])).to1DArray();
-  return Array.from({ length: count }, () => {
-    const z = Matrix.columnVector(Array.from({ length: size }, normal));
-    return toPath
-      .mmul(z)
-      .to1DArray()
-      .map((value, i) => value + centre[i]);
-  });
-}
-
 function surfaceOf(melt: number, gloss: number): Surface {
   const [m, g] = [sigmoid(melt), sigmoid(gloss)];
   const p = { underfired: 1 - m, matte: m * (1 - g), gloss: m * g };
@@ -157,9 +126,9 @@ describe('a turn, against draws of another library', () => {
   const cones = Array.from({ length: 161 }, (_, i) => 4 + i / 40);
   const [{ turns }] = shift(surer, [{ point: 'P', unity: GLOSSY }], [5, 6, 7]).points;
   const [turn] = turns;
-  const random = seededGenerator(77);
-  const melt = drawnPaths(surer.melt, random, GLOSSY, cones, 3000);
-  const gloss = drawnPaths(surer.gloss, random, GLOSSY, cones, 3000);
+  const path = cones.map((coneIndex) => ({ unity: GLOSSY, coneIndex }));
+  const melt = denseDraws(surer.melt, path, 3000, 77);
+  const gloss = denseDraws(surer.gloss, path, 3000, 78);
 
   const placeOf = ({ from, to, coneIndex }: Turn, draw: number): number | undefined => {
     const path = cones.map((_, i) => surfaceOf(melt[draw][i], gloss[draw][i]));

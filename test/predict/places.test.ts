@@ -1,7 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import type { Unity } from '../../src/chemistry/unity.ts';
 import { fitUnvalidated } from '../../src/model/fit.ts';
-import { columnValues, scaledInputs } from '../../src/model/inputs.ts';
 import { stageLogOdds } from '../../src/model/log-odds.ts';
 import { isJudged } from '../../src/model/stages.ts';
 import { sigmoid } from '../../src/numeric/logistic.ts';
@@ -10,38 +9,46 @@ import type { BoundaryAxis } from '../../src/predict/answers.ts';
 import { boundaries } from '../../src/predict/boundaries.ts';
 import { placeAlong } from '../../src/predict/lines.ts';
 import { placePosterior } from '../../src/predict/place.ts';
-import { posteriorDraws } from '../../src/predict/posterior-draws.ts';
+import { DRAWS, normalTable, pathDraws } from '../../src/predict/path-draws.ts';
 import { shift } from '../../src/predict/shift.ts';
 import { surfaceInWords } from '../../src/predict/words.ts';
 import { aHeat, anArchive, aTile } from '../support/builders.ts';
+import { denseDraws, denseLogOdds, type Asked } from '../support/dense-draws.ts';
 import { inventedTiles } from '../support/invented-tiles.ts';
 
 const tiles = inventedTiles({ tiles: 250, seed: 31 });
 const model = fitUnvalidated(anArchive(tiles));
 const unity = { SiO2: 3.4, Al2O3: 0.46, B2O3: 0.15, Na2O: 0.15, K2O: 0.15, MgO: 0.04, CaO: 0.66 };
 const through = { point: 'P', unity };
-const draws = posteriorDraws(model);
 
-/** Log-odds of one draw, computed from its weights without the code under test. */
-function drawnLogOdds(stage: 'melt' | 'gloss', draw: number, at: Unity, cone: number): number {
-  const { columns, weights } = draws[stage];
-  const row = columnValues(scaledInputs(at, cone), columns);
-  return row.reduce((sum, value, j) => sum + value * weights[draw * columns.length + j], 0);
-}
+describe('draws over a path', () => {
+  const path: Asked[] = Array.from({ length: 41 }, (_, i) => ({ unity, coneIndex: 4 + i / 10 }));
 
-describe('posterior draws', () => {
-  it('have the posterior mean and variance of the log-odds', () => {
-    const { melt } = draws;
-    const row = columnValues(scaledInputs(unity, 6), melt.columns);
-    const values = Array.from({ length: melt.count }, (_, draw) =>
-      row.reduce((sum, x, j) => sum + x * melt.weights[draw * melt.columns.length + j], 0),
-    );
-    const { mean, sd } = stageLogOdds(model.melt, unity, 6);
-    const average = values.reduce((a, b) => a + b, 0) / values.length;
-    const variance = values.reduce((sum, v) => sum + (v - average) ** 2, 0) / (values.length - 1);
-    expect(Math.abs(average - mean)).toBeLessThan((4 * sd) / Math.sqrt(values.length));
-    expect(Math.abs(variance / sd ** 2 - 1)).toBeLessThan(4 * Math.sqrt(2 / values.length));
-  });
+  it.each(['melt', 'gloss'] as const)(
+    'have the mean and covariance of the posterior: %s',
+    (name) => {
+      const { mean, covariance } = denseLogOdds(model[name], path);
+      path.forEach((point, i) => {
+        const { mean: own, sd } = stageLogOdds(model[name], point.unity, point.coneIndex);
+        expect(own).toBeCloseTo(mean[i], 9);
+        expect(sd ** 2).toBeCloseTo(covariance.get(i, i), 9);
+      });
+      const draws = pathDraws(model[name], path, normalTable(name));
+      const values = Array.from({ length: draws.count }, (_, draw) => draws.logOdds(draw));
+      for (const i of [0, 13, 20, 40]) {
+        const average = values.reduce((sum, v) => sum + v[i], 0) / DRAWS;
+        const sd = Math.sqrt(covariance.get(i, i));
+        expect(Math.abs(average - mean[i])).toBeLessThan((4 * sd) / Math.sqrt(DRAWS));
+        for (const j of [0, 20, 33]) {
+          const shared =
+            values.reduce((sum, v) => sum + (v[i] - mean[i]) * (v[j] - mean[j]), 0) / DRAWS;
+          const scale = Math.sqrt(covariance.get(i, i) * covariance.get(j, j));
+          const error = Math.abs(shared - covariance.get(i, j)) / scale;
+          expect(error).toBeLessThan(4 * Math.sqrt(2 / DRAWS));
+        }
+      }
+    },
+  );
 });
 
 describe('turns', () => {
@@ -63,14 +70,18 @@ describe('turns', () => {
   it('have the interval of the draws, by brute force over a fine grid of cones', () => {
     const { from, to, coneIndex, interval90, noCrossing } = answer.turns[0];
     expect([from, to]).toEqual(['underfired', 'gloss']);
-    const looked = 300;
+    const looked = 2000;
     const found: number[] = [];
+    const cones = Array.from({ length: 201 }, (_, i) => 4 + i / 50);
+    const path = cones.map((cone) => ({ unity, coneIndex: cone }));
+    const melt = denseDraws(model.melt, path, looked, 71);
+    const gloss = denseDraws(model.gloss, path, looked, 72);
     for (let draw = 0; draw < looked; draw++) {
       let before: string | undefined;
       const places: number[] = [];
-      for (let cone = 4; cone <= 8; cone += 0.02) {
-        const m = sigmoid(drawnLogOdds('melt', draw, unity, cone));
-        const g = sigmoid(drawnLogOdds('gloss', draw, unity, cone));
+      for (const [i, cone] of cones.entries()) {
+        const m = sigmoid(melt[draw][i]);
+        const g = sigmoid(gloss[draw][i]);
         const p = { underfired: 1 - m, matte: m * (1 - g), gloss: m * g };
         const now = (['underfired', 'matte', 'gloss'] as const).reduce((a, b) =>
           p[b] > p[a] ? b : a,
@@ -181,14 +192,13 @@ describe('boundaries', () => {
     const row = answer.boundaries.find(
       ({ cone, kind, along }) => cone === '6' && kind === 'melt' && along === 'Al2O3',
     )!;
-    const looked = 400;
+    const looked = 2000;
     const [low, high] = row.interval90 as [number, number];
-    const inside = Array.from({ length: looked }, (_, draw) => {
-      // Melted below the place, underfired above it: the place is inside if the ends differ.
-      const atLow = drawnLogOdds('melt', draw, held('Al2O3', low), 6) > 0;
-      const atHigh = drawnLogOdds('melt', draw, held('Al2O3', high), 6) > 0;
-      return atLow && !atHigh;
-    }).filter(Boolean).length;
+    const ends = [low, high].map((place) => ({ unity: held('Al2O3', place), coneIndex: 6 }));
+    // Melted below the place, underfired above it: the place is inside if the ends differ.
+    const inside = denseDraws(model.melt, ends, looked, 73).filter(
+      ([atLow, atHigh]) => atLow > 0 && atHigh <= 0,
+    ).length;
     expect(inside / looked).toBeGreaterThan(0.86);
     expect(inside / looked).toBeLessThan(0.94);
   });

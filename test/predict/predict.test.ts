@@ -150,7 +150,7 @@ describe('points', () => {
   it('reports everything that is wrong at once', () => {
     const read = () => glazePoint('SiO2=3.4 AI2O3=0.4 K2O=x CaO CaO=1 CaO=2');
     expect(read).toThrow('expected an oxide, got "AI2O3"; nearest known: "Al2O3"');
-    expect(read).toThrow('expected moles of K2O such as 0.42, got "x"');
+    expect(read).toThrow('expected moles of K2O: a number such as 0.42, got "x"');
     expect(read).toThrow('expected OXIDE=MOLES, got "CaO"');
     expect(read).toThrow('expected CaO once, got it again ("CaO=2")');
   });

@@ -1,30 +1,24 @@
 import { expect, it } from 'vitest';
 import { fitUnvalidated } from '../../src/model/fit.ts';
-import { columnValues, scaledInputs } from '../../src/model/inputs.ts';
 import { SURFACES, type Surface } from '../../src/model/model.ts';
 import { sigmoid } from '../../src/numeric/logistic.ts';
 import { seededGenerator } from '../../src/numeric/random.ts';
-import { posteriorDraws } from '../../src/predict/posterior-draws.ts';
+import { normalTable, pathDraws } from '../../src/predict/path-draws.ts';
 import { shift } from '../../src/predict/shift.ts';
 import { anArchive } from '../support/builders.ts';
 import { drawnUnity, inventedTiles } from '../support/invented-tiles.ts';
 
 const model = fitUnvalidated(anArchive(inventedTiles({ tiles: 80, seed: 31 })));
-const draws = posteriorDraws(model);
 const cones = Array.from({ length: 81 }, (_, i) => 4 + i / 20);
 
 it('a draw that turns over the third surface inside the range leaves no end of the interval open', () => {
   const source = seededGenerator(3);
   for (let glaze = 0; glaze < 12; glaze++) {
     const unity = drawnUnity(source);
+    const path = cones.map((coneIndex) => ({ unity, coneIndex }));
     const rows = (['melt', 'gloss'] as const).map((stage) => {
-      const { columns, weights, count } = draws[stage];
-      const design = cones.map((cone) => columnValues(scaledInputs(unity, cone), columns));
-      return Array.from({ length: count }, (_, d) =>
-        design.map((row) =>
-          row.reduce((sum, x, j) => sum + x * weights[d * columns.length + j], 0),
-        ),
-      );
+      const draws = pathDraws(model[stage], path, normalTable(stage));
+      return Array.from({ length: draws.count }, (_, d) => [...draws.logOdds(d)]);
     });
     const paths = rows[0].map((melt, d) =>
       melt.map((value, i): Surface => {

@@ -81,6 +81,12 @@ describe('the page of shift', () => {
     expect(page.match(/A prediction is no promise/g)).toHaveLength(1);
   });
 
+  it('cuts a name that is longer than the page', () => {
+    const page = shiftOf(aPointShift({ point: `Glaze${'x'.repeat(190)}7` }));
+    expect(widest(page)).toBeLessThanOrEqual(80);
+    expect(page).toMatch(/^Glazex+\.\.x+7$/m);
+  });
+
   it('neutralises names and stays within 80 columns', () => {
     const point = '\u001b[2JGlaze';
     const long = 'x'.repeat(200);
@@ -161,13 +167,29 @@ describe('the page of boundaries', () => {
     expect(lineWith(page, '+0.12')).toContain('not known');
   });
 
-  it('says which side the whole line lies on where it meets no boundary', () => {
-    const page = boundariesOf(
-      aBoundary({ value: null, support: null, perCone: null, above: 'melted', noCrossing: 0.66 }),
+  it('says in words where a line meets no boundary, which side it lies on, and how surely', () => {
+    const none = { value: null, support: null, perCone: null, above: 'melted' };
+    const page = boundariesOf(aBoundary({ ...none, noCrossing: 0.66 }));
+    expect(joined(page)).toContain(
+      'melt none from 0.10 to 0.90, melted all along (chance of none 66 %; if there is one, 90 %: 0.66 to 0.78)',
     );
-    expect(lineWith(page, 'none').trim()).toMatch(/^melt +none +all melted +0\.66 to 0\.78 +66 %$/);
     expect(page).not.toContain('Nearest tiles');
     expect(page).not.toContain('Moved by one cone');
+    const sure = boundariesOf(aBoundary({ ...none, interval90: [null, null], noCrossing: 0.999 }));
+    expect(joined(sure)).toContain('melted all along (chance of none >99 %)');
+  });
+
+  it('keeps to 80 columns beside a line that is underfired all along', () => {
+    const wide = {
+      lookedAt: [0.1, 5.75] as const,
+      interval90: [null, null] as const,
+      noCrossing: 0.34,
+    };
+    const page = boundariesOf(
+      aBoundary({ ...wide, above: 'underfired', value: 2.31, support: 'outside', tilesNear: 120 }),
+      aBoundary({ ...wide, above: 'underfired', value: null, support: null, kind: 'gloss' }),
+    );
+    expect(widest(page)).toBeLessThanOrEqual(80);
   });
 
   it('lists several crossings of one line, and ratios to a tenth', () => {

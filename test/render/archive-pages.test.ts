@@ -70,6 +70,29 @@ describe('the page of check', () => {
     expect(widest(page)).toBeLessThanOrEqual(80);
   });
 
+  it('does not promise a fit where no tile is judged', () => {
+    const page = joined(check(anArchive([aTile({ verdict: 'unjudged' })])));
+    expect(page).toContain(
+      'No faults, but no judged tile: fit will answer from the prior alone, from what is usual ' +
+        'elsewhere; nothing is learnt yet.',
+    );
+    expect(page).not.toContain('can be fitted');
+    expect(joined(check(anArchive()))).not.toContain('can be fitted');
+    expect(check(anArchive([aTile()]))).toContain('No faults: the archive can be fitted.');
+  });
+
+  it('says in what order it took the firings of a kiln that lack a date', () => {
+    const cones = ['6', '5.8', '5.6'];
+    const firings = (date?: string) =>
+      cones.map((cone, i) => ({
+        ...{ firing: `K${i}`, line: 2, kiln: 'North', setCone: '6', cone },
+        ...(date === undefined ? {} : { date: `${date}${i + 1}` }),
+      }));
+    const words = 'taken by name: not all have a date';
+    expect(joined(check(anArchive([], { firings: firings() })))).toContain(words);
+    expect(joined(check(anArchive([], { firings: firings('2024-05-0') })))).not.toContain(words);
+  });
+
   it('bears an archive without tiles', () => {
     expect(check(anArchive())).toContain('0 tiles read = 0 fitted');
   });
@@ -112,9 +135,9 @@ describe('the page of fit', () => {
     const page = fitPage({ model: withValidation({}), leftOut: [] }, PLAIN_LOOK);
     expect(joined(page)).toContain('a probability of 0.50 (geometric mean), better than the 0.30');
     expect(joined(page)).toContain('Of 120 tiles called 90 % sure or more, 113 were right.');
-    expect(page).toMatch(/one cone +130 +2 +-0\.69 +-1\.20 +120 +113 \(94 %\)/);
+    expect(page).toMatch(/cone +2 +130 +-0\.69 +-1\.20 +120 +113 \(94 %\)/);
     expect(page).toMatch(/90 to 100 % +113 of 120 \(94 %\)/);
-    expect(page).toMatch(/one load +cannot be tested/);
+    expect(page).toMatch(/^ +load +-$/m);
     expect(page).toMatch(/cone 5 +60 +-0\.80 +-1\.30/);
   });
 
@@ -125,6 +148,42 @@ describe('the page of fit', () => {
     );
     expect(page).toContain('a probability of 0.25 (geometric mean), NO better than the 0.30');
     expect(page).toContain('It called no tile 90 % sure.');
+  });
+
+  it('says what a group is, and how many shared a turn', () => {
+    const part = { tiles: 5, logScore: -0.7, baseRateLogScore: -1 };
+    const byGlaze = {
+      ...byCone,
+      folds: 2,
+      parts: ['glazes 1 (3)', 'glazes 2 (8)'].map((leftOut) => ({ ...part, leftOut })),
+    };
+    const outcome = { model: withValidation({ byGlaze }), leftOut: [], detail: true };
+    const page = fitPage(outcome, PLAIN_LOOK);
+    expect(joined(page)).toContain(
+      'A group: all tiles of a cone (6.5 counts to 7), of a load, or of a glaze (a recipe, a formula or ' +
+        'a blend). To save time, the 11 glazes in 2 lots.',
+    );
+    expect(page).toMatch(/lot 1: 3 glazes +5 /);
+    expect(page).toMatch(/lot 2: 8 glazes +5 /);
+  });
+
+  it('warns that so few tiles say almost nothing, on the page and in the notes of the JSON', () => {
+    const few = { ...byCone, tiles: 3 };
+    const said = '3 judged tiles: so few say almost nothing about how the model holds';
+    const outcome = { model: withValidation({ byCone: few }), leftOut: [] };
+    expect(joined(fitPage(outcome, PLAIN_LOOK))).toContain(said);
+    expect(fitAnswer(outcome).notes.join()).toContain(said);
+    const enough = { model: withValidation({}), leftOut: [] };
+    expect(joined(fitPage(enough, PLAIN_LOOK))).not.toContain('so few');
+  });
+
+  it('says where the tiles were fired, also where none names its firing', () => {
+    const words = (tiles: readonly ReturnType<typeof aTile>[]) =>
+      joined(fitPage({ model: fitModel(anArchive(tiles)), leftOut: [] }, PLAIN_LOOK));
+    const [named, alone] = [aTile({ tile: 'A', firing: 'K1' }), aTile({ tile: 'B' })];
+    expect(words([named])).toContain('The tiles were fired in 1 load.');
+    expect(words([alone])).toContain('No tile names its firing: each counts as a load of its own.');
+    expect(words([named, alone])).toContain('fired in 1 load, and 1 without a firing');
   });
 
   it('says that one cone cannot be tested', () => {
@@ -149,34 +208,34 @@ describe('the page of fit', () => {
 });
 
 describe('loads that stand out', () => {
-  const withLoads = (melt: readonly LoadEffect[], gloss: readonly LoadEffect[] = []) => ({
-    melt: { ...model.melt, columns: ['1', 'heat'], mean: [0, 2], loads: melt },
-    gloss: { ...model.gloss, loads: gloss },
+  const load = (name: string, offset: number, gloss = 0): LoadEffect => ({
+    load: name,
+    tiles: 9,
+    offsetCones: { mean: offset, sd: 0.2 },
+    glossLogOdds: { mean: gloss, sd: 0.5 },
   });
-  const load = (name: string, mean: number) => ({ load: name, tiles: 9, mean, sd: 0.5 });
+  const told = (...loads: readonly LoadEffect[]) => {
+    const loadSpread = { offsetSdCones: 0.21, glossSd: 0.5 };
+    return joined(loadSection({ loads, loadSpread }, PLAIN_LOOK).lines.join(' '));
+  };
 
   it('are those whose 90 % interval leaves out nought, told in cones', () => {
-    const { lines } = loadSection(withLoads([load('K1', -1.2), load('K2', 0.8)]), PLAIN_LOOK);
-    const text = joined(lines.join(' '));
+    const text = told(load('K1', -0.6), load('K2', 0.3));
     expect(text).toContain(
-      'K1 (9 tiles): melted less than its cone says, as if fired about 0.6 cone cooler ' +
-        '(log-odds -1.2, sd 0.5)',
+      'K1 (9 tiles): as if fired 0.6 cone cooler than its cone on paper (sd 0.2)',
     );
     expect(text).not.toContain('K2');
+    expect(text).toContain('Loads differ in heat by about 0.21 cone (sd)');
     expect(text).toContain('may stand out by chance');
   });
 
   it('are told for gloss, too, and none is told as none', () => {
-    const { lines } = loadSection(
-      withLoads([load('K1', 0), load('K2', 0)], [load('K2', 1.4)]),
-      PLAIN_LOOK,
+    expect(told(load('K1', 0), load('K2', 0, 1.4))).toContain(
+      'K2 (9 tiles): more gloss than its heat explains (log-odds +1.4, sd 0.5)',
     );
-    expect(joined(lines.join(' '))).toContain(
-      'K2 (9 melted tiles): more gloss than the other loads',
-    );
-    expect(loadSection(withLoads([load('K1', 0), load('K2', 0)]), PLAIN_LOOK).lines).toEqual([
-      '  None.',
-    ]);
+    const none = told(load('K1', 0), load('K2', 0));
+    expect(none).toContain('None. Loads differ in heat');
+    expect(none).not.toContain('by chance');
   });
 });
 

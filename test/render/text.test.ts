@@ -93,6 +93,46 @@ describe('aligned columns', () => {
     ).toEqual(['釉   1', 'ab  10']);
   });
 
+  const cell = fc.stringMatching(/^[a-z0-9]{0,9}$/);
+  const table = fc.integer({ min: 1, max: 9 }).chain((count) =>
+    fc.array(fc.array(cell, { minLength: count, maxLength: count }), {
+      minLength: 1,
+      maxLength: 6,
+    }),
+  );
+
+  it('never leave the page however narrow, and lose no cell', () => {
+    fc.assert(
+      fc.property(table, fc.integer({ min: 40, max: 100 }), (rows, columns) => {
+        const texts = alignedLines({ rows, columns, indent: 2 });
+        expect(texts).toHaveLength(rows.length);
+        const lines = texts.flatMap((text) => text.split('\n'));
+        expect(lines.every((line) => textWidth(line) <= columns)).toBe(true);
+        const back = texts.map((text) => text.split(/\s+/).filter((word) => word !== ''));
+        expect(back).toEqual(rows.map((row) => row.filter((word) => word !== '')));
+      }),
+    );
+  });
+
+  it('move together before they fold, and fold below their own row', () => {
+    const rows = [
+      ['cone', 'x'.repeat(20), 'y'.repeat(12)],
+      ['5', 'a', 'b'],
+    ];
+    expect(alignedLines({ rows, columns: 40 })[0]).toBe(
+      `cone  ${'x'.repeat(20)}  ${'y'.repeat(12)}`,
+    );
+    const close = [['cone', 'x'.repeat(20), 'y'.repeat(14)]];
+    expect(alignedLines({ rows: close, columns: 40 })).toEqual([
+      `cone ${'x'.repeat(20)} ${'y'.repeat(14)}`,
+    ]);
+    const folded = [...[['cone', 'x'.repeat(20), 'y'.repeat(30)]], ['5', 'a', 'b']];
+    expect(alignedLines({ rows: folded, columns: 40 })).toEqual([
+      `cone  ${'x'.repeat(20)}\n    ${'y'.repeat(30)}`,
+      '5     a\n    b',
+    ]);
+  });
+
   it('bears rows of different length', () => {
     expect(alignedLines({ rows: [['a', 'b', 'c'], ['long']], indent: 1 })).toEqual([
       ' a     b  c',

@@ -1,15 +1,18 @@
 import { Command } from 'commander';
 import { UsageError } from '../../errors.ts';
 import { conesOf, USUAL_CONES } from '../cone-options.ts';
+import { helpText } from '../help-text.ts';
 import type { Io } from '../io.ts';
 import { lookOf } from '../look.ts';
 import { modelAt } from '../model-input.ts';
 import { pointsOf, withPointOptions, type PointOptions } from '../point-options.ts';
+import { tellNotes } from '../report-error.ts';
 
 const HELP = `
 The lines run through the middle of the archive, or through the one glaze that
 --glaze, --points or --recipe names: along alumina, along silica, and along
-SiO2:Al2O3 with their sum held. MODEL stands before --cone.
+SiO2:Al2O3 with their sum held. MODEL stands before --cone, --glaze and
+--recipe, which take every word after them.
 
 Example:
   coneshift boundaries model.json --cone 5 6 7 --recipe Bellringer`;
@@ -28,12 +31,13 @@ export const boundariesCommand = (io: Io): Command =>
   )
     .option('-c, --cone <cone...>', 'cones to answer for (5 6 7 if not given)')
     .option('--json', 'write JSON instead of a page')
-    .addHelpText('after', HELP)
+    .addHelpText('after', () => helpText(HELP, io.columns))
     .action(async (path: string, flags: BoundariesFlags) => {
       const { boundaries, boundaryPage, toJson } = await import('../../index.ts');
       const cones = await conesOf(flags.cone ?? USUAL_CONES);
       const model = await modelAt(path, io);
-      const [through, ...more] = await pointsOf(flags, { model, path }, io);
+      const { points, notes } = await pointsOf(flags, { model, path }, io);
+      const [through, ...more] = points;
       if (more.length > 0) {
         throw new UsageError(
           `expected one glaze to run the lines through, got ${more.length + 1}`,
@@ -41,5 +45,7 @@ export const boundariesCommand = (io: Io): Command =>
         );
       }
       const answers = boundaries(model, cones, through === undefined ? {} : { through });
-      io.out(flags.json ? toJson(answers) : boundaryPage(answers, lookOf(io)));
+      await tellNotes(notes, io);
+      const whole = { ...answers, notes: [...notes, ...answers.notes] };
+      io.out(flags.json ? toJson(whole) : boundaryPage(answers, lookOf(io)));
     });

@@ -1,6 +1,7 @@
 import { Command } from 'commander';
 import { archiveFilesAt } from '../archive-input.ts';
 import { UnreadableError } from '../cli-errors.ts';
+import { helpText } from '../help-text.ts';
 import type { Io } from '../io.ts';
 import { lookOf } from '../look.ts';
 
@@ -17,7 +18,7 @@ export const checkCommand = (io: Io): Command =>
     .description('is the archive readable; what is in it; what looks odd')
     .argument('<archive>', 'folder of CSV files, one CSV file, or - for one CSV on stdin')
     .option('--json', 'write JSON instead of a page')
-    .addHelpText('after', HELP)
+    .addHelpText('after', () => helpText(HELP, io.columns))
     .action(async (path: string, { json = false }: { json?: boolean }) => {
       const { checkAnswer, checkPage, inventory, readArchive, toJson } =
         await import('../../index.ts');

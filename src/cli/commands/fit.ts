@@ -2,14 +2,20 @@ import { Command } from 'commander';
 import { ArchiveError } from '../../errors.ts';
 import type { ArchiveReading } from '../../index.ts';
 import { archiveFilesAt } from '../archive-input.ts';
+import { helpText } from '../help-text.ts';
 import type { Io } from '../io.ts';
 import { lookOf } from '../look.ts';
 import { modelIsWritable } from '../model-output.ts';
-import { safeLines } from '../report-error.ts';
+import { tell } from '../report-error.ts';
 
 const HELP = `
 Stops at any faulty row unless --leave-out-faulty is given; then those rows
 count as refused. Nothing is written without --out.
+
+Exit code 2 if --out names a file that must not be written over, 3 if the
+archive has faults or a file cannot be read or written. 4 is kept for what
+cannot be fitted; any number of judged tiles can, none included: the model then
+says what is usual elsewhere.
 
 Example:
   coneshift fit datasets/demo-studio --out model.json`;
@@ -33,38 +39,39 @@ export const fitCommand = (io: Io): Command =>
     .option('--leave-out-faulty', 'go on without faulty rows')
     .option('--detail', 'show every load and glaze left out, and the sds of the weights')
     .option('--json', 'write JSON instead of a page')
-    .addHelpText('after', HELP)
+    .addHelpText('after', () => helpText(HELP, io.columns))
     .action(async (path: string, flags: FitFlags) => {
       const { out, json = false, detail = false } = flags;
-      const { fitAnswer, fitModel, fitPage, modelText, readArchive, toJson } =
+      const { compositionDoubts, fitAnswer, fitModel, fitPage, modelText, readArchive, toJson } =
         await import('../../index.ts');
       if (out !== undefined) await modelIsWritable(out, io);
       const reading = readArchive(await archiveFilesAt(path, io));
       const { archive, faults } = reading;
-      tellFaults(reading, flags, io);
+      await tellFaults(reading, flags, io);
       if (archive.counts.fitted >= MANY_TILES) {
-        io.err(`Fitting ${archive.counts.fitted} tiles, anew for each part left out ...\n`);
+        await tell(`Fitting ${archive.counts.fitted} tiles, anew for each group left out ...`, io);
       }
       const model = fitModel(archive, { madeBy: `coneshift ${io.version}` });
       if (out !== undefined) await io.writeFileWhole(out, modelText(model));
-      const outcome = { model, leftOut: faults, writtenTo: out, detail };
+      const doubts = compositionDoubts(archive);
+      const outcome = { model, leftOut: faults, writtenTo: out, detail, doubts };
       io.out(json ? toJson(fitAnswer(outcome)) : fitPage(outcome, lookOf(io)));
     });
 
 /** Faulty rows stop the fit, or are named on the stream for messages: none goes in silence. */
-function tellFaults(
-  { archive, faults }: ArchiveReading,
-  { leaveOutFaulty }: FitFlags,
-  io: Io,
-): void {
+async function tellFaults(reading: ArchiveReading, flags: FitFlags, io: Io): Promise<void> {
+  const { archive, faults } = reading;
   if (faults.length === 0) return;
-  if (leaveOutFaulty !== true) {
-    throw new ArchiveError(
-      faults,
-      'Mend the files, or go on without the faulty rows by --leave-out-faulty.',
-    );
+  const goesOn = flags.leaveOutFaulty === true && archive.tiles.length > 0;
+  const hint =
+    flags.leaveOutFaulty === true
+      ? 'No sound tile is left: mend the files first.'
+      : 'Mend the files, or go on without the faulty rows by --leave-out-faulty.';
+  const error = new ArchiveError(faults, hint);
+  if (goesOn) return tell(`coneshift: left out, ${error.message}`, io);
+  if (flags.json === true) {
+    const { toJson, unfittedAnswer } = await import('../../index.ts');
+    io.out(toJson(unfittedAnswer(reading)));
   }
-  const error = new ArchiveError(faults, 'No sound tile is left: mend the files first.');
-  if (archive.tiles.length === 0) throw error;
-  io.err(safeLines(`coneshift: left out, ${error.message}\n`));
+  throw error;
 }

@@ -1,13 +1,15 @@
 import { Command } from 'commander';
 import { conesOf } from '../cone-options.ts';
+import { helpText } from '../help-text.ts';
 import type { Io } from '../io.ts';
 import { lookOf } from '../look.ts';
 import { modelAt } from '../model-input.ts';
 import { somePoints, withPointOptions, type PointOptions } from '../point-options.ts';
+import { tellNotes } from '../report-error.ts';
 
 const HELP = `
 Name the glaze by --glaze, --points or --recipe, or by several of them. MODEL
-stands before --cone.
+stands before --cone, --glaze and --recipe, which take every word after them.
 
 Example:
   coneshift predict model.json --cone 5 6 --glaze \\
@@ -27,12 +29,15 @@ export const predictCommand = (io: Io): Command =>
   )
     .requiredOption('-c, --cone <cone...>', 'cones to answer for, such as 6, 06 or 5.5')
     .option('--json', 'write JSON instead of a page')
-    .addHelpText('after', HELP)
+    .addHelpText('after', () => helpText(HELP, io.columns))
     .action(async (path: string, flags: PredictFlags) => {
       const { predict, predictionPage, toJson } = await import('../../index.ts');
       const cones = await conesOf(flags.cone);
       const model = await modelAt(path, io);
-      const points = await somePoints(flags, { model, path }, io);
+      const { points, notes } = await somePoints(flags, { model, path }, io);
       const answers = predict(model, points, cones);
-      io.out(flags.json ? toJson(answers) : predictionPage(answers, points, lookOf(io)));
+      await tellNotes(notes, io);
+      io.out(
+        flags.json ? toJson({ ...answers, notes }) : predictionPage(answers, points, lookOf(io)),
+      );
     });

@@ -1,0 +1,184 @@
+import { columnValues, heatSlopes, scaledInputs } from './inputs.ts';
+import type { Block, LatentProblem } from './latent.ts';
+import { GLOSS_PRIOR, MELT_PRIOR, priorColumns, type StagePrior } from './priors.ts';
+import { chosenCentres, radialPlace, radialValues, type Radial } from './radial.ts';
+import type { Scales } from './scales.ts';
+import type { JudgedTile } from './judged.ts';
+
+/** The two questions, in the order of the blocks. */
+export const STAGES = ['melt', 'gloss'] as const;
+export type StageName = (typeof STAGES)[number];
+
+/** Prior of each stage. */
+export const STAGE_PRIOR: Readonly<Record<StageName, StagePrior>> = {
+  melt: MELT_PRIOR,
+  gloss: GLOSS_PRIOR,
+};
+
+/** The tiles of one stage as numbers. */
+export interface StageDesign {
+  readonly name: StageName;
+  readonly tiles: readonly JudgedTile[];
+  readonly count: number;
+  readonly size: number;
+  /** Prior mean of each weight; those of the radial columns come last and are 0. */
+  readonly priorMean: readonly number[];
+  /** Which sd each weight has: the group's number; radial columns come after all groups. */
+  readonly groupOf: readonly number[];
+  readonly radial: Radial;
+  /** [tiles][weights] */
+  readonly values: Float64Array;
+  /** [tiles][columns]: growth of each column per cone; the radial columns' is left out. */
+  readonly slopes: Float64Array;
+  readonly columnCount: number;
+  readonly outcome: Float64Array;
+  readonly weight: Float64Array;
+  readonly load: Int32Array;
+}
+
+export interface DesignOptions {
+  readonly loadNumber: ReadonlyMap<string, number>;
+  /** How often each tile counts; 1 where absent. */
+  readonly weight?: ((tile: JudgedTile) => number) | undefined;
+}
+
+/** One centre for so many tiles, and no more than the time of a fit allows. */
+const TILES_PER_CENTRE = 16;
+const MOST_CENTRES = 48;
+
+/**
+ * The tiles that a stage asks about, and what it asks of each.
+ *
+ * @param name - stage
+ * @param tiles - judged tiles, sorted by name
+ * @param options - loads, centres, weights
+ * @returns the design
+ */
+export function stageDesign(
+  name: StageName,
+  tiles: readonly JudgedTile[],
+  { loadNumber, weight }: DesignOptions,
+): StageDesign {
+  const own = name === 'melt' ? tiles : tiles.filter(isGlossOrMatte);
+  const prior = STAGE_PRIOR[name];
+  const columns = priorColumns(prior);
+  const inputs = own.map(({ unity, heat }) => scaledInputs(unity, heat.coneIndex));
+  const places = inputs.map(radialPlace);
+  const most = Math.min(MOST_CENTRES, Math.floor(own.length / TILES_PER_CENTRE));
+  const radial = chosenCentres(places, most);
+  const rows = inputs.map((row, i) => [
+    ...columnValues(row, columns),
+    ...radialValues(radial, places[i]!).values,
+  ]);
+  const radialColumns = radial.centres.map(() => 0);
+  return {
+    name,
+    tiles: own,
+    count: own.length,
+    size: columns.length + radialColumns.length,
+    priorMean: [...prior.groups.flatMap(({ means }) => Object.values(means)), ...radialColumns],
+    groupOf: [
+      ...prior.groups.flatMap(({ means }, g) => Object.keys(means).map(() => g)),
+      ...radialColumns.map(() => prior.groups.length),
+    ],
+    radial,
+    values: Float64Array.from(rows.flat()),
+    slopes: Float64Array.from(inputs.flatMap((row) => heatSlopes(row, columns))),
+    columnCount: columns.length,
+    outcome: Float64Array.from(own, (tile) => (isYes(name, tile) ? 1 : 0)),
+    weight: Float64Array.from(own, weight ?? (() => 1)),
+    load: Int32Array.from(own, ({ load }) => loadNumber.get(load)!),
+  };
+}
+
+function isGlossOrMatte({ verdict }: JudgedTile): boolean {
+  return verdict === 'matte' || verdict === 'gloss';
+}
+
+function isYes(name: StageName, { verdict }: JudgedTile): boolean {
+  return name === 'melt' ? verdict !== 'underfired' : verdict === 'gloss';
+}
+
+/**
+ * The design of some of the tiles, with the same centres.
+ *
+ * @param stage - design of all tiles
+ * @param kept - which rows, ascending
+ * @param load - load of each row kept
+ * @returns the design of the rows kept
+ */
+export function keptRows(
+  stage: StageDesign,
+  kept: readonly number[],
+  load: Int32Array,
+): StageDesign {
+  const { size, columnCount } = stage;
+  const values = new Float64Array(kept.length * size);
+  const slopes = new Float64Array(kept.length * columnCount);
+  kept.forEach((from, to) => {
+    values.set(stage.values.subarray(from * size, (from + 1) * size), to * size);
+    const row = stage.slopes.subarray(from * columnCount, (from + 1) * columnCount);
+    slopes.set(row, to * columnCount);
+  });
+  return {
+    ...stage,
+    tiles: kept.map((i) => stage.tiles[i]!),
+    count: kept.length,
+    values,
+    slopes,
+    outcome: Float64Array.from(kept, (i) => stage.outcome[i]!),
+    weight: Float64Array.from(kept, (i) => stage.weight[i]!),
+    load,
+  };
+}
+
+/** Both stages' tiles, and how many loads they come from. */
+export interface Design {
+  readonly stages: readonly StageDesign[];
+  readonly loadCount: number;
+}
+
+/**
+ * The problem of both stages at given scales, in units of the prior.
+ *
+ * A load's first unknown is its heat less the cone on paper: it moves each of its tiles by what a cone
+ * does there, in both stages. What a cone does is taken at the given weights.
+ *
+ * @param design - both stages
+ * @param scales - sds and shares
+ * @param weights - weights of both stages, end to end
+ * @returns the problem
+ */
+export function problemAt(
+  design: Design,
+  scales: Scales,
+  weights: readonly Float64Array[],
+): LatentProblem {
+  return {
+    blocks: design.stages.map((stage, s) => blockAt(stage, scales, weights[s]!)),
+    loadCount: design.loadCount,
+  };
+}
+
+function blockAt(stage: StageDesign, scales: Scales, weights: Float64Array): Block {
+  const { count, size, values, slopes, columnCount, priorMean, groupOf } = stage;
+  const own = scales[stage.name];
+  const sds = groupOf.map((g) => own.groups[g] ?? own.residual);
+  const rows = new Float64Array(values.length);
+  const offset = new Float64Array(count);
+  const effects = new Float64Array(2 * count);
+  const glossSd = stage.name === 'gloss' ? scales.loads.gloss : 0;
+  for (let i = 0; i < count; i++) {
+    const base = i * size;
+    for (let j = 0; j < size; j++) {
+      rows[base + j] = values[base + j]! * sds[j]!;
+      offset[i]! += values[base + j]! * priorMean[j]!;
+    }
+    let slope = 0;
+    for (let j = 0; j < columnCount; j++) slope += slopes[i * columnCount + j]! * weights[j]!;
+    effects[2 * i] = slope * scales.loads.offsetCones;
+    effects[2 * i + 1] = glossSd;
+  }
+  const { outcome, weight, load } = stage;
+  return { count, size, rows, offset, outcome, weight, load, effects, flipped: own.flipped };
+}

@@ -1,0 +1,20 @@
+import type { Heat, Tile } from '../archive/archive.ts';
+
+/** What the fit can take a tile for. */
+export type FittedVerdict = 'underfired' | 'matte' | 'gloss' | 'melted';
+
+/** A tile that is judged and whose heat is known. */
+export interface JudgedTile extends Tile {
+  readonly verdict: FittedVerdict;
+  readonly heat: Heat;
+}
+
+/**
+ * Whether the fit uses a tile: judged, not overfired, its heat known.
+ *
+ * @param tile - a tile of an archive
+ * @returns true if the tile is fitted
+ */
+export function isJudged(tile: Tile): tile is JudgedTile {
+  return tile.heat !== undefined && tile.verdict !== 'unjudged' && tile.verdict !== 'overfired';
+}
