@@ -43,8 +43,8 @@ export interface DesignOptions {
 }
 
 /** One centre for so many tiles, and no more than the time of a fit allows. */
-const TILES_PER_CENTRE = 16;
-const MOST_CENTRES = 48;
+const TILES_PER_CENTRE = 20;
+const MOST_CENTRES = 64;
 
 /**
  * The tiles that a stage asks about, and what it asks of each.

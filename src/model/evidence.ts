@@ -45,13 +45,14 @@ export interface EvidenceFit {
 export interface EvidenceStart {
   readonly scales: Scales;
   readonly weights?: readonly Float64Array[];
+  /** Largest relative move of a variance, or move of a weight, in the last round; 0.01 where absent. */
+  readonly tolerance?: number;
 }
 
-/** Largest relative move of a variance, or move of a weight, in the last round. */
 const CONVERGED_MOVE = 0.01;
 const MOST_ROUNDS = 200;
-/** Decrement at which the last maximum is near enough: a thousandth of a prior sd in no weight. */
-const LAST_DECREMENT = 1e-7;
+/** Decrement at which the last maximum is near enough, per square of the tolerance. */
+const LAST_DECREMENT = 1e-3;
 
 /**
  * Fits both stages, and re-estimates from the tiles the prior sds, the spread of the loads and the share
@@ -76,11 +77,12 @@ export function evidenceFit(
   start: EvidenceStart = { scales: startingScales(STAGE_PRIOR) },
   isHeld = false,
 ): EvidenceFit {
+  const { tolerance = CONVERGED_MOVE } = start;
   let { scales } = start;
   let weights = start.weights ?? design.stages.map((s) => Float64Array.from(s.priorMean));
   let loads = new Float64Array(2 * design.loadCount);
   let rounds = 0;
-  for (let move = Infinity; rounds < MOST_ROUNDS && move > CONVERGED_MOVE; rounds++) {
+  for (let move = Infinity; rounds < MOST_ROUNDS && move > tolerance; rounds++) {
     const problem = problemAt(design, scales, weights);
     const from = unknownsAt(design, scales, weights, loads);
     const step = newtonStep(problem, from);
@@ -92,20 +94,21 @@ export function evidenceFit(
     loads = loadsAt(scales, unknowns.loads);
     scales = next;
   }
-  return averagedFit(design, { scales, weights }, loads, rounds, isHeld);
+  return averagedFit(design, { scales, weights, tolerance }, loads, rounds, isHeld);
 }
 
 function averagedFit(
   design: Design,
-  { scales, weights }: Required<EvidenceStart>,
+  { scales, weights, tolerance }: Required<EvidenceStart>,
   loads: Float64Array,
   rounds: number,
   isHeld: boolean,
 ): EvidenceFit {
   const problem = problemAt(design, scales, weights);
-  const mode = maximum(problem, unknownsAt(design, scales, weights, loads), LAST_DECREMENT);
+  const enough = LAST_DECREMENT * tolerance ** 2;
+  const mode = maximum(problem, unknownsAt(design, scales, weights, loads), enough);
   const sds = rowSds(problem, mode.step);
-  const centre = maximum(problem, { ...mode.unknowns, sds }, LAST_DECREMENT);
+  const centre = maximum(problem, { ...mode.unknowns, sds }, enough);
   const { covariance, loadVariance } = posteriorSpread(centre.step);
   const { theta } = centre.unknowns;
   const widened = isHeld ? covariance : withScalesSpread(design, theta, covariance);

@@ -9,6 +9,13 @@ export interface Fold {
 
 /** Bounds the time of validation: beyond it whole groups share a fold. */
 const MOST_FOLDS = { load: 20, glaze: 10 };
+/** With so many tiles fewer folds tell as much. */
+const MANY_TILES = 1000;
+const FOLDS_OF_MANY = { load: 8, glaze: 5 };
+
+function mostFolds(tiles: readonly JudgedTile[]): typeof MOST_FOLDS {
+  return tiles.length > MANY_TILES ? FOLDS_OF_MANY : MOST_FOLDS;
+}
 
 /**
  * One fold for each whole cone that was fired; a load between two counts to the nearer.
@@ -32,7 +39,7 @@ export function foldsByCone(tiles: readonly JudgedTile[]): Fold[] {
 export function foldsByLoad(tiles: readonly JudgedTile[]): Fold[] {
   return packed(
     groupedBy(tiles, (tile) => tile.load),
-    MOST_FOLDS.load,
+    mostFolds(tiles).load,
     'loads',
   );
 }
@@ -47,7 +54,7 @@ export function foldsByGlaze(tiles: readonly JudgedTile[]): Fold[] {
   const family = glazeFamilies(tiles);
   return packed(
     groupedBy(tiles, (tile) => family.get(tile)!),
-    MOST_FOLDS.glaze,
+    mostFolds(tiles).glaze,
     'glazes',
   );
 }

@@ -17,7 +17,7 @@ export interface StagePrior {
 /** What the loads of an archive differ in, before any tile. */
 export const LOAD_PRIOR = {
   /** Sd of a load's heat about the cone on paper, in cones. */
-  startOffsetCones: 0.2,
+  startOffsetCones: 0.15,
   /** Sd of what cooling and atmosphere do to the gloss of a load, log-odds. */
   startGlossSd: 0.3,
 } as const;
@@ -36,12 +36,12 @@ export const WRONG_VERDICTS = { startShare: 0.015, pseudoTiles: 100 } as const;
  * The sds were weighed on invented studios; the table stands in DEVELOPERS.md.
  */
 export const MELT_PRIOR: StagePrior = {
-  startResidualSd: 0.7,
+  startResidualSd: 0.8,
   groups: [
     { name: 'intercept', startSd: 2, means: { '1': 3 } },
     { name: 'silica and alumina', startSd: 1, means: { SiO2: -2, Al2O3: -1 } },
     { name: 'fluxes', startSd: 0.7, means: { B2O3: 1.5, KNaO: 0.7, MgO: -0.3, ZnO: 0 } },
-    { name: 'heat', startSd: 0.4, means: { heat: 1.6 } },
+    { name: 'heat', startSd: 0.5, means: { heat: 1.6 } },
     {
       name: 'curvature',
       startSd: 0.4,
@@ -71,7 +71,7 @@ export const MELT_PRIOR: StagePrior = {
  * practice, no source); heat and boron help gloss a little, magnesia matte.
  */
 export const GLOSS_PRIOR: StagePrior = {
-  startResidualSd: 0.5,
+  startResidualSd: 0.6,
   groups: [
     { name: 'intercept', startSd: 2, means: { '1': 3 } },
     { name: 'ratio', startSd: 1.2, means: { ratio: 4 } },

@@ -17,16 +17,16 @@ export const NO_CENTRES: Radial = { centres: [], factorLower: [] };
 
 /**
  * Over how much of an input the departure keeps its sign, in units of the scaled input: a large but
- * usual change of a glaze, and three cones (chosen on invented studios).
+ * usual change of a glaze, and some cones (chosen on invented studios).
  */
 const LENGTH: Readonly<Partial<Record<keyof Inputs, number>>> = {
-  SiO2: 1,
-  Al2O3: 1,
-  B2O3: 1.2,
-  KNaO: 1.5,
-  MgO: 1.5,
-  ZnO: 1.5,
-  heat: 3,
+  SiO2: 1.1,
+  Al2O3: 1.1,
+  B2O3: 1.3,
+  KNaO: 1.7,
+  MgO: 2,
+  ZnO: 2,
+  heat: 2,
 };
 
 /** Numbers that a place has. */

@@ -44,6 +44,9 @@ export function fitStages(
   return fitOf({ stages, loadCount: loads.length }, loads, start, heldScales !== undefined);
 }
 
+/** The scores of tiles left out stand to two digits: their fits need no more than that. */
+const WITHOUT_TOLERANCE = 0.05;
+
 /**
  * The fit without some of its tiles: sds re-estimated, centres kept, begun where the whole fit ended.
  *
@@ -60,7 +63,8 @@ export function fitWithout(whole: StagesFit, without: ReadonlySet<JudgedTile>): 
     return keptRows(stage, kept, load);
   });
   const { scales, weights } = whole.fit;
-  return fitOf({ stages, loadCount: loads.length }, loads, { scales, weights }, false);
+  const start = { scales, weights, tolerance: WITHOUT_TOLERANCE };
+  return fitOf({ stages, loadCount: loads.length }, loads, start, false);
 }
 
 function numberedLoads(tiles: readonly JudgedTile[]) {

@@ -135,7 +135,7 @@ function boundaryRow(question: Question, kind: StageName, crossing: Crossing): B
     value,
     ...placePosterior(there),
     lookedAt: line.range,
-    ...placeSupport(question, value),
+    ...placeSupport(question, kind, value),
     perCone: value === null ? null : meanMove(question, kind, crossing),
     perConeInterval90: placePosterior(moves).interval90,
     below,
@@ -241,12 +241,20 @@ function sides(question: Question, kind: StageName, crossing: Crossing): [string
 }
 
 /** The tiles about a place, and how far inside the archive it lies. */
-function placeSupport({ experience, coneIndex, line }: Question, value: number | null) {
+function placeSupport(
+  { experience, coneIndex, line }: Question,
+  kind: StageName,
+  value: number | null,
+) {
   if (value === null) return { tilesNear: 0, support: null, nearest: [] };
   const squares = squaredSteps(experience, line.unityAt(value));
   const isNear = (heat: number, i: number) =>
     squares[i]! <= EDGE_STEPS ** 2 && Math.abs(heat - coneIndex) <= NEAR_CONES;
-  const tilesNear = experience.tiles.filter(({ heat }, i) => isNear(heat!.coneIndex, i)).length;
+  // An underfired tile says nothing of gloss.
+  const speaks = (verdict: string) => kind === 'melt' || verdict === 'gloss' || verdict === 'matte';
+  const tilesNear = experience.tiles.filter(
+    ({ heat, verdict }, i) => speaks(verdict) && isNear(heat!.coneIndex, i),
+  ).length;
   const { support, nearest } = surroundings(experience, squares, coneIndex);
   return { tilesNear, support, nearest };
 }

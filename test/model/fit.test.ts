@@ -24,8 +24,10 @@ describe('fitModel', () => {
   });
 
   it('has the weights of the fit that is not validated', () => {
-    const { melt, gloss } = fitUnvalidated(anArchive(tiles));
+    const { melt, gloss, loads, loadSpread, logEvidence } = fitUnvalidated(anArchive(tiles));
     expect([model.melt, model.gloss]).toEqual([melt, gloss]);
+    expect([model.loads, model.loadSpread]).toEqual([loads, loadSpread]);
+    expect(model.logEvidence).toBe(logEvidence);
   });
 
   it('lists loads that have a firing, and leaves out those of single unnamed tiles', () => {

@@ -113,4 +113,20 @@ describe('folds of any archive', () => {
       { numRuns: 40, seed: 4 },
     );
   });
+
+  it('of more than 1,000 tiles are fewer: 8 by load, 5 by glaze, and still never split a group', () => {
+    const many = Array.from({ length: 1001 }, (_, i) =>
+      aTile({
+        tile: `T${i}`,
+        recipe: `R${i % 60}`,
+        unity: { SiO2: 2 + (i % 60) / 100, Al2O3: 0.4, CaO: 1 },
+        load: `L${i % 45}`,
+      }),
+    ).filter(isJudged);
+    expect([foldsByLoad(many).length, foldsByGlaze(many).length]).toEqual([8, 5]);
+    expect(keepTogether(foldsByLoad(many), many, ({ load }) => load)).toBe(true);
+    expect(keepTogether(foldsByGlaze(many), many, ({ recipe }) => recipe)).toBe(true);
+    const fewer = many.slice(1);
+    expect([foldsByLoad(fewer).length, foldsByGlaze(fewer).length]).toEqual([20, 10]);
+  });
 });

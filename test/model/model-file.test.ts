@@ -24,6 +24,14 @@ function changed(change: (data: Record<string, never>) => void): string {
   return JSON.stringify(data);
 }
 type Data = Record<string, Record<string, unknown[]>>;
+/** The text with one change to the radial columns of melting. */
+function changedRadial(change: (radial: { centres: number[][]; factorLower: number[] }) => void) {
+  return changed((d) => {
+    change((d as Data)['melt']['radial'] as unknown as Parameters<typeof change>[0]);
+  });
+}
+const centres = model.melt.radial.centres.length;
+const factorCells = (centres * (centres + 1)) / 2;
 
 it('comes back from its text whole, and then byte for byte', () => {
   const again = modelText(parseModel(text));
@@ -45,6 +53,8 @@ it('keeps columns with the names of object internals as data', () => {
 it('is refused by the writer if a number is not finite', () => {
   const broken: Model = { ...model, logEvidence: Number.NaN };
   expect(() => modelText(broken)).toThrow('finite numbers only, logEvidence is NaN');
+  const far: Model = { ...model, loadSpread: { ...model.loadSpread, offsetSdCones: Infinity } };
+  expect(() => modelText(far)).toThrow('finite numbers only, offsetSdCones is Infinity');
 });
 
 describe('a file that is no model', () => {
@@ -68,6 +78,10 @@ describe('a file that is no model', () => {
 });
 
 describe('a damaged model', () => {
+  it('had centres: some of the damages are to them', () => {
+    expect(centres).toBeGreaterThan(1);
+  });
+
   const damages: readonly (readonly [string, string, string])[] = [
     ['an unknown key', changed((d) => Object.assign(d, { run: 'x' })), 'Unrecognized key: "run"'],
     ['a number turned null', text.replace('"sd":', '"sd":null,"x":'), 'melt.groups.0.sd'],
@@ -100,11 +114,35 @@ describe('a damaged model', () => {
     ],
     [
       'a centre with a number too few',
-      changed((d) => {
-        const radial = (d as Data)['melt']['radial'] as unknown as { centres: number[][] };
-        radial.centres[0].pop();
-      }),
+      changedRadial((radial) => radial.centres[0].pop()),
       'melt.radial.centres.0: expected 7 numbers, got 6',
+    ],
+    [
+      'a centre too few',
+      changedRadial((radial) => radial.centres.pop()),
+      `melt.mean: expected ${22 + centres} numbers, got ${23 + centres}`,
+    ],
+    [
+      'a factor cell too few',
+      changedRadial((radial) => radial.factorLower.pop()),
+      `melt.radial.factorLower: expected ${factorCells} numbers, got ${factorCells - 1}`,
+    ],
+    [
+      'a factor that is none',
+      changedRadial((radial) => {
+        radial.factorLower[2] = -0.5;
+      }),
+      'melt.radial.factorLower: expected a positive diagonal',
+    ],
+    [
+      'a share of wrong verdicts above 1',
+      changed((d) => Object.assign((d as Data)['gloss'], { wrongVerdicts: 1.01 })),
+      'gloss.wrongVerdicts',
+    ],
+    [
+      'a spread of loads below 0',
+      text.replace('"offsetSdCones":', '"offsetSdCones":-'),
+      'loadSpread.offsetSdCones',
     ],
     [
       'a weight changed by hand',

@@ -1,20 +1,28 @@
 import { describe, expect, it } from 'vitest';
-import { evidenceFit, heldFit, startingSds } from '../../src/model/evidence.ts';
-import { logisticPosterior } from '../../src/model/logistic.ts';
-import { GLOSS_PRIOR, MELT_PRIOR, priorColumns, type StagePrior } from '../../src/model/priors.ts';
-import { fitStages, isJudged, STAGE_PRIOR } from '../../src/model/stages.ts';
-import { inventedTiles } from '../support/invented-tiles.ts';
+import { columnValues, heatSlopes, scaledInputs, type Inputs } from '../../src/model/inputs.ts';
+import {
+  GLOSS_PRIOR,
+  LOAD_PRIOR,
+  MELT_PRIOR,
+  priorColumns,
+  WRONG_VERDICTS,
+  type StagePrior,
+} from '../../src/model/priors.ts';
+import { seededGenerator } from '../../src/numeric/random.ts';
+import { drawnUnity } from '../support/invented-tiles.ts';
 
-// The priors as the design states them, typed here a second time: column, prior mean, sd of its group.
+// The priors as they were chosen, typed here a second time: column, prior mean, sd of its group. A change
+// of one must be meant.
 const MELT = `
-  1 1.5 2, SiO2 -2 1.2, Al2O3 -2 1.2, B2O3 1 0.9, KNaO 0.5 0.9, MgO 0 0.9, ZnO 0 0.9, heat 1.5 0.6,
-  SiO2^2 -0.5 0.6, Al2O3^2 -0.5 0.6, SiO2*Al2O3 0 0.6, ratio 0 0.6, ratio^2 0 0.6,
-  SiO2*B2O3 0 0.3, Al2O3*B2O3 0 0.3, SiO2*heat 0 0.3, Al2O3*heat 0 0.3, B2O3*heat 0 0.3,
-  SiO2*KNaO 0 0.3, Al2O3*KNaO 0 0.3, B2O3^2 0 0.3, heat^2 0 0.3, KNaO*heat 0 0.3`;
+  1 3 2, SiO2 -2 1, Al2O3 -1 1, B2O3 1.5 0.7, KNaO 0.7 0.7, MgO -0.3 0.7, ZnO 0 0.7, heat 1.6 0.5,
+  SiO2^2 -0.5 0.4, Al2O3^2 -1.2 0.4, SiO2*Al2O3 0.5 0.4, ratio 0 0.4, ratio^2 0 0.4,
+  SiO2*B2O3 0 0.25, Al2O3*B2O3 0 0.25, SiO2*heat 0 0.25, Al2O3*heat 0 0.25, B2O3*heat 0 0.25,
+  SiO2*KNaO 0 0.25, Al2O3*KNaO 0 0.25, B2O3^2 0 0.25, heat^2 0 0.25, KNaO*heat 0 0.25`;
 const GLOSS = `
-  1 1 2, ratio 4 1.5, SiO2 0 0.6, Al2O3 0 0.6, B2O3 0.5 0.6, KNaO 0 0.6, MgO -0.5 0.6, ZnO 0 0.6,
-  heat 0.4 0.42, ratio^2 0 0.3, SiO2^2 0 0.3, Al2O3^2 0 0.3, SiO2*Al2O3 0 0.3, ratio*B2O3 0 0.3,
-  ratio*heat 0 0.3, B2O3*heat 0 0.3, heat^2 0 0.3, B2O3^2 0 0.3, ratio*KNaO 0 0.3, ratio*MgO 0 0.3`;
+  1 3 2, ratio 4 1.2, SiO2 0 0.5, Al2O3 0 0.5, B2O3 0.5 0.5, KNaO 0 0.5, MgO -0.5 0.5, ZnO 0 0.5,
+  heat 0.4 0.3, ratio^2 0 0.2, SiO2^2 0 0.2, Al2O3^2 0 0.2, SiO2*Al2O3 0 0.2, ratio*B2O3 0 0.2,
+  ratio*heat 0 0.2, B2O3*heat 0 0.2, heat^2 0 0.2, B2O3^2 0 0.2, ratio*KNaO 0 0.2, ratio*MgO 0 0.2`;
+const RESIDUAL = { melt: 0.8, gloss: 0.6 };
 
 const asStated = (table: string) =>
   table.split(',').map((entry) => {
@@ -28,11 +36,16 @@ const asBuilt = ({ groups }: StagePrior) =>
 
 describe('priors', () => {
   it.each([
-    ['melt', MELT_PRIOR, MELT],
-    ['gloss', GLOSS_PRIOR, GLOSS],
-  ])('of %s are those of the design, column by column', (_, prior, table) => {
+    ['melt', MELT_PRIOR, MELT, RESIDUAL.melt],
+    ['gloss', GLOSS_PRIOR, GLOSS, RESIDUAL.gloss],
+  ])('of %s are those that were chosen, column by column', (_, prior, table, residual) => {
     expect(asBuilt(prior)).toEqual(asStated(table));
-    expect(prior.startLoadSd).toBe(0.5);
+    expect(prior.startResidualSd).toBe(residual);
+  });
+
+  it('of loads and wrong verdicts are those that were chosen', () => {
+    expect(LOAD_PRIOR).toEqual({ startOffsetCones: 0.15, startGlossSd: 0.3 });
+    expect(WRONG_VERDICTS).toEqual({ startShare: 0.015, pseudoTiles: 100 });
   });
 
   it('put columns of unlike sd in groups of their own', () => {
@@ -43,61 +56,75 @@ describe('priors', () => {
       1, 1, 6, 1, 11,
     ]);
   });
+
+  it('are 23 columns of melting and 20 of gloss, each made of known inputs', () => {
+    expect(priorColumns(MELT_PRIOR)).toHaveLength(23);
+    expect(priorColumns(GLOSS_PRIOR)).toHaveLength(20);
+    expect(new Set(priorColumns(MELT_PRIOR)).size).toBe(23);
+    expect(new Set(priorColumns(GLOSS_PRIOR)).size).toBe(20);
+    const inputs = scaledInputs(drawnUnity(seededGenerator(100)), 5.5);
+    for (const prior of [MELT_PRIOR, GLOSS_PRIOR]) {
+      expect(columnValues(inputs, priorColumns(prior)).every(Number.isFinite)).toBe(true);
+    }
+    expect(() => columnValues(inputs, ['constructor'])).toThrow(
+      'column constructor names no input',
+    );
+  });
 });
 
-describe.each(['melt', 'gloss'] as const)('the re-estimated sds of %s', (name) => {
-  const prior = STAGE_PRIOR[name];
-  const start = startingSds(prior);
+describe('inputs', () => {
+  const above = { SiO2: 4.2, Al2O3: 0.59, B2O3: 0.33, Na2O: 0.4, MgO: 0.14, ZnO: 0.09, CaO: 0.37 };
 
-  it('are the starting ones without tiles, to the last bit, and the posterior is the prior', () => {
-    const none = { rows: [], outcome: [], load: [] };
-    const { sds, posterior, rounds } = evidenceFit(none, prior);
-    expect(sds).toEqual(start);
-    expect(rounds).toBe(1);
-    expect(posterior.mean).toEqual(asBuilt(prior).map(([, mean]) => mean));
-    expect(posterior.logEvidence).toBeCloseTo(0, 12);
+  it('are 0 at the centre and 1 a scale above it', () => {
+    const [K2O, CaO] = [0.3, 0.61];
+    const centre = { SiO2: 3.2, Al2O3: 0.42, B2O3: 0.18, K2O, MgO: 0.06, ZnO: 0.03, CaO };
+    const { ratio, ...others } = scaledInputs(centre, 6);
+    for (const value of Object.values(others)) expect(value).toBeCloseTo(0, 12);
+    expect(ratio).toBeCloseTo(Math.log(3.2 / 0.42 / 7) / 0.4, 12);
+    const { ratio: unused, ...scaled } = scaledInputs(above, 7);
+    for (const value of Object.values(scaled)) expect(value).toBeCloseTo(1, 12);
+    expect(unused).toBeCloseTo(Math.log(4.2 / 0.59 / 7) / 0.4, 12);
   });
 
-  it('of the loads end at their fixed point', () => {
-    const { fit } = fitStages(inventedTiles({ tiles: 160, seed: 6 }).filter(isJudged))[name];
-    const { loadMean, loadVariance } = fit.posterior;
-    const squares = loadMean.reduce((sum, mean) => sum + mean ** 2, 4 * start.load ** 2);
-    const determined = loadVariance.reduce((sum, v) => sum + 1 - v / fit.sds.load ** 2, 4);
-    expect(fit.sds.load / Math.sqrt(squares / determined)).toBeCloseTo(1, 5);
-    expect(determined).toBeLessThanOrEqual(4 + loadMean.length);
+  it('count lithia as alkali and keep the ratio finite without alumina', () => {
+    expect(scaledInputs({ Li2O: 0.3, CaO: 0.7, SiO2: 3 }, 6).KNaO).toBeCloseTo(0, 12);
+    const bare = scaledInputs({ CaO: 1, SiO2: 3 }, 6).ratio;
+    expect(bare).toBeCloseTo(Math.log(3 / 0.02 / 7) / 0.4, 12);
+  });
+});
+
+describe('columns', () => {
+  const columns = ['1', 'SiO2', 'SiO2^2', 'SiO2*B2O3', 'heat', 'heat^2', 'SiO2*heat', 'ratio*heat'];
+  const unity = drawnUnity(seededGenerator(101));
+  const at = (cone: number) => columnValues(scaledInputs(unity, cone), columns);
+
+  it('are the products that their names say, heat itself by the cone', () => {
+    const { SiO2, B2O3 }: Inputs = scaledInputs(unity, 8.5);
+    expect(at(8.5).slice(0, 5)).toEqual([1, SiO2, SiO2 * SiO2, SiO2 * B2O3, 2.5]);
   });
 
-  it('grow for loads that disagree and shrink for loads that agree', () => {
-    const sdOf = (errors: readonly number[]) => {
-      const tiles = inventedTiles({ tiles: 600, seed: 7, loadErrors: errors, cones: ['6'] });
-      return fitStages(tiles.filter(isJudged)).melt.fit.sds.load;
-    };
-    const agreeing = sdOf(Array.from({ length: 20 }, () => 0));
-    const apart = sdOf(Array.from({ length: 20 }, (_, l) => (l % 2 ? 1 : -1)));
-    expect(agreeing).toBeLessThan(0.5);
-    expect(apart).toBeGreaterThan(0.8);
+  it('with heat in a product level off: as good as the cone near the centre, bounded far off', () => {
+    const scaled = scaledInputs(unity, 6);
+    const heatIn = (cone: number) => at(cone)[6] / scaled.SiO2;
+    expect(heatIn(6)).toBe(0);
+    expect(Math.abs(heatIn(6.5) - 0.5)).toBeLessThan(0.02);
+    expect(heatIn(4)).toBeCloseTo(-heatIn(8), 12);
+    expect(at(9)[5]).toBeCloseTo(heatIn(9) ** 2, 12);
+    expect(at(9)[7]).toBeCloseTo(scaled.ratio * heatIn(9), 12);
+    const path = Array.from({ length: 60 }, (_, i) => heatIn(-5 + i / 2));
+    for (let i = 1; i < path.length; i++) expect(path[i]).toBeGreaterThan(path[i - 1]);
+    // Nothing that bends the answer is left to grow between cones 14 and 30.
+    expect(heatIn(30) / heatIn(14)).toBeLessThan(1.1);
   });
 
-  it('move with the tiles, each never below what four observations of its start leave', () => {
-    const { fit } = fitStages(inventedTiles({ tiles: 900, seed: 9 }).filter(isJudged))[name];
-    fit.sds.groups.forEach((sd, g) => {
-      const { startSd, means } = prior.groups[g];
-      // No departures at all, every weight determined: 4 start^2 / (4 + columns).
-      const least = startSd * Math.sqrt(4 / (4 + Object.keys(means).length));
-      expect(sd).toBeGreaterThan(least * 0.999);
-      expect(sd).not.toBe(startSd);
-    });
-  });
-
-  it('are kept by a held fit, which is the plain posterior at those sds', () => {
-    const { data } = fitStages(inventedTiles({ tiles: 60, seed: 8 }).filter(isJudged))[name];
-    const held = { groups: start.groups.map((sd) => sd * 0.7), load: 0.3 };
-    const { sds, rounds, posterior } = heldFit(data, prior, held);
-    const sd = prior.groups.flatMap(({ means }, g) => Object.keys(means).map(() => held.groups[g]));
-    const mean = asBuilt(prior).map(([, value]) => Number(value));
-    const plain = logisticPosterior(data, { mean, sd, loadSd: 0.3 });
-    expect([sds, rounds]).toEqual([held, 0]);
-    expect(posterior).toEqual(plain);
-    expect(posterior.mean).toHaveLength(priorColumns(prior).length);
+  it('grow with heat at the slope that is stated', () => {
+    const h = 1e-4;
+    for (const cone of [-2, 4.5, 6, 6.3, 9]) {
+      const slopes = heatSlopes(scaledInputs(unity, cone), columns);
+      const [before, after] = [at(cone - h), at(cone + h)];
+      slopes.forEach((slope, j) => {
+        expect(Math.abs(slope - (after[j] - before[j]) / (2 * h))).toBeLessThan(1e-7);
+      });
+    }
   });
 });

@@ -93,6 +93,7 @@ describe('over invented studios whose truth is drawn from the prior', () => {
   const places = { melt: new Tails(), gloss: new Tails() };
   const crossings = { stated: 0, missing: 0, asked: 0 };
   const called = { stated: 0, true: 0, asked: 0 };
+  const offsets = new Tails();
   beforeAll(() => {
     const source = seededGenerator(1);
     for (let i = 0; i < STUDIOS; i++) {
@@ -111,6 +112,9 @@ describe('over invented studios whose truth is drawn from the prior', () => {
           turns.add(turn.interval90, trueTurn(studio, answer.unity, turn, answer.lookedAt));
         }
       }
+      studio.model.loads.forEach(({ offsetCones: { mean, sd } }, l) => {
+        offsets.add([mean - 1.6449 * sd, mean + 1.6449 * sd], studio.offsets[l]);
+      });
       if (i % 2 === 1) continue;
       const [through] = points;
       for (const row of boundaries(studio.model, [6], { through }).boundaries) {
@@ -153,5 +157,12 @@ describe('over invented studios whose truth is drawn from the prior', () => {
     expect(crossings.asked).toBeGreaterThan(100);
     expect(crossings.missing / crossings.stated).toBeGreaterThan(0.4);
     expect(crossings.missing / crossings.stated).toBeLessThan(1.6);
+  });
+
+  // 640 loads: a standard error of 0.006.
+  it('5 % of the true offsets of the loads lie off each end', () => {
+    expect(offsets.asked).toBe(2 * 8 * STUDIOS);
+    expect(offsets.share).toBeGreaterThan(0.03);
+    expect(offsets.share).toBeLessThan(0.07);
   });
 });

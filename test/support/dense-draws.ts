@@ -12,13 +12,13 @@ export interface Asked {
 
 /** Lengths of the kernel, typed here a second time. */
 const LENGTHS: Readonly<Partial<Record<keyof Inputs, number>>> = {
-  SiO2: 1,
-  Al2O3: 1,
-  B2O3: 1.2,
-  KNaO: 1.5,
-  MgO: 1.5,
-  ZnO: 1.5,
-  heat: 3,
+  SiO2: 1.1,
+  Al2O3: 1.1,
+  B2O3: 1.3,
+  KNaO: 1.7,
+  MgO: 2,
+  ZnO: 2,
+  heat: 2,
 };
 
 function placeOf({ unity, coneIndex }: Asked): number[] {
