@@ -12,7 +12,7 @@ type ChartRow = readonly [
  * the chart gives none.
  *
  * Source: Edward Orton Jr. Ceramic Foundation, chart of temperature equivalents for self-supporting
- * cones; verified in two transcriptions of it (15 degrees an hour) and a third in degrees F (60 and
+ * cones; verified in two copies of it (15 degrees an hour) and a third in degrees F (60 and
  * 150), the half cones in two. The rows with their status stand in
  * `datasets/published/cone-temperatures.csv`.
  */

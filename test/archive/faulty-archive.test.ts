@@ -59,7 +59,7 @@ witness.csv:4 shelf: expected each shelf once, got "bottom" in line 3 as well
 witness.csv:5 firing: expected a firing of firings.csv, got "F12"; nearest known: "F1", "F2" or "F10"
 witness.csv:6 cone: expected a cone that fits peak_c 998, got "6" (about 1222 °C); 06 (about 998 °C) fits better: spreadsheets turn 06 into 6
 witness.csv:7 shelf: expected a shelf, got a blank cell
-recipes.csv:7 material: expected a material of materials.csv, got "Talk"; nearest known: "Talc"
+recipes.csv:7 material: expected a material of materials.csv, got "Talq"; nearest known: "Talc"
 recipes.csv:8 parts: expected parts: a number, got "ten"
 recipes.csv:9 parts: expected parts above 0, at most 1000000, got "0"
 recipes.csv:10 over_100: expected yes, no or a blank cell, got "perhaps"

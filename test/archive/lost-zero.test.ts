@@ -6,7 +6,7 @@ import { publishedTable } from '../reference/chemistry-tables.ts';
 
 describe('endPointC', () => {
   // Source: Edward Orton Jr. Ceramic Foundation, self-supporting cones at 60 degrees C an hour
-  // (verified: transcriptions agree; the maker's name from memory).
+  // (verified: copies agree; the maker's name from memory).
   it.each([
     ['022', 586],
     ['06', 998],

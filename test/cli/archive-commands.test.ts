@@ -232,7 +232,7 @@ describe('coneshift unity', () => {
 
   it('does not mind faulty tiles, but names the faults of recipes', async () => {
     expect((await called(['unity', 's', 'Clear'], { files: FAULTY })).exitCode).toBe(0);
-    const files = { ...STUDIO, 's/recipes.csv': `${STUDIO['s/recipes.csv']}Odd,Talk,100\n` };
+    const files = { ...STUDIO, 's/recipes.csv': `${STUDIO['s/recipes.csv']}Odd,Talq,100\n` };
     const { exitCode, err } = await called(['unity', 's'], { files });
     expect(exitCode).toBe(3);
     expect(err).toContain('recipes.csv:7 material: expected a material of materials.csv');

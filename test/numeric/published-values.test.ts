@@ -33,7 +33,7 @@ describe('percentage points', () => {
 });
 
 // Source: G. E. Alefeld, F. A. Potra and Y. Shi, Algorithm 748, ACM Trans. Math. Softw. 21 (1995)
-// 327-344, table I: functions, brackets and roots; verified in a public transcription of the table.
+// 327-344, table I: functions, brackets and roots; verified in a public copy of the table.
 describe('findRoot on the functions of Algorithm 748', () => {
   const poles = (x: number) => {
     let sum = 0;
