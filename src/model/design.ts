@@ -1,3 +1,4 @@
+import { dot } from '../numeric/linalg.ts';
 import { columnValues, heatSlopes, scaledInputs } from './inputs.ts';
 import type { Block, LatentProblem } from './latent.ts';
 import { GLOSS_PRIOR, MELT_PRIOR, priorColumns, type StagePrior } from './priors.ts';
@@ -31,6 +32,8 @@ export interface StageDesign {
   /** [tiles][columns]: growth of each column per cone; the radial columns' is left out. */
   readonly slopes: Float64Array;
   readonly columnCount: number;
+  /** Per tile: log-odds at the prior means. */
+  readonly priorLogOdds: Float64Array;
   readonly outcome: Float64Array;
   readonly weight: Float64Array;
   readonly load: Int32Array;
@@ -71,12 +74,14 @@ export function stageDesign(
     ...radialValues(radial, places[i]!).values,
   ]);
   const radialColumns = radial.centres.map(() => 0);
+  const priorMean = prior.groups.flatMap(({ means }) => Object.values(means));
   return {
     name,
     tiles: own,
     count: own.length,
     size: columns.length + radialColumns.length,
-    priorMean: [...prior.groups.flatMap(({ means }) => Object.values(means)), ...radialColumns],
+    priorMean: [...priorMean, ...radialColumns],
+    priorLogOdds: Float64Array.from(rows, (row) => dot(priorMean, row)),
     groupOf: [
       ...prior.groups.flatMap(({ means }, g) => Object.keys(means).map(() => g)),
       ...radialColumns.map(() => prior.groups.length),
@@ -124,6 +129,7 @@ export function keptRows(
     ...stage,
     tiles: kept.map((i) => stage.tiles[i]!),
     count: kept.length,
+    priorLogOdds: Float64Array.from(kept, (i) => stage.priorLogOdds[i]!),
     values,
     slopes,
     outcome: Float64Array.from(kept, (i) => stage.outcome[i]!),
@@ -146,39 +152,49 @@ export interface Design {
  *
  * @param design - both stages
  * @param scales - sds and shares
- * @param weights - weights of both stages, end to end
+ * @param weights - of both stages
+ * @param stretch - how much wider than usual each load's heat is taken to spread; 1 where absent
  * @returns the problem
  */
 export function problemAt(
   design: Design,
   scales: Scales,
   weights: readonly Float64Array[],
+  stretch?: Float64Array,
 ): LatentProblem {
   return {
-    blocks: design.stages.map((stage, s) => blockAt(stage, scales, weights[s]!)),
+    blocks: design.stages.map((stage, s) => blockAt(stage, scales, weights[s]!, stretch)),
     loadCount: design.loadCount,
   };
 }
 
-function blockAt(stage: StageDesign, scales: Scales, weights: Float64Array): Block {
-  const { count, size, values, slopes, columnCount, priorMean, groupOf } = stage;
+function blockAt(
+  stage: StageDesign,
+  scales: Scales,
+  weights: Float64Array,
+  stretch?: Float64Array,
+): Block {
+  const { count, size, values, slopes, columnCount, priorLogOdds, groupOf } = stage;
   const own = scales[stage.name];
-  const sds = groupOf.map((g) => own.groups[g] ?? own.residual);
-  const rows = new Float64Array(values.length);
-  const offset = new Float64Array(count);
   const effects = new Float64Array(2 * count);
   const glossSd = stage.name === 'gloss' ? scales.loads.gloss : 0;
   for (let i = 0; i < count; i++) {
-    const base = i * size;
-    for (let j = 0; j < size; j++) {
-      rows[base + j] = values[base + j]! * sds[j]!;
-      offset[i]! += values[base + j]! * priorMean[j]!;
-    }
     let slope = 0;
     for (let j = 0; j < columnCount; j++) slope += slopes[i * columnCount + j]! * weights[j]!;
-    effects[2 * i] = slope * scales.loads.offsetCones;
+    effects[2 * i] = slope * scales.loads.offsetCones * (stretch?.[stage.load[i]!] ?? 1);
     effects[2 * i + 1] = glossSd;
   }
   const { outcome, weight, load } = stage;
-  return { count, size, rows, offset, outcome, weight, load, effects, flipped: own.flipped };
+  return {
+    count,
+    size,
+    rows: values,
+    scale: Float64Array.from(groupOf, (g) => own.groups[g] ?? own.residual),
+    offset: priorLogOdds,
+    outcome,
+    weight,
+    load,
+    effects,
+    flipped: own.flipped,
+  };
 }

@@ -1,18 +1,14 @@
+import { lowerIndex } from '../numeric/linalg.ts';
 import { sigmoid } from '../numeric/logistic.ts';
 import { stageCovariances, withScalesSpread } from './covariance.ts';
 import { problemAt, STAGE_PRIOR, type Design } from './design.ts';
-import { rowLogOdds, type LatentProblem, type Unknowns } from './latent.ts';
+import { blockLogOdds, type LatentProblem, type Unknowns } from './latent.ts';
 import { laplaceEvidence } from './logistic.ts';
-import {
-  backtracked,
-  maximum,
-  newtonStep,
-  posteriorSpread,
-  rowSds,
-  type NewtonStep,
-} from './newton.ts';
+import { backtracked, exactStep, maximum, newtonStep, type NewtonStep } from './newton.ts';
+import { posteriorSpread, rowSds, type PosteriorSpread } from './spread.ts';
 import { LOAD_PRIOR, WRONG_VERDICTS } from './priors.ts';
 import {
+  carriedOn,
   fixedPointSd,
   groupDepartures,
   largestMove,
@@ -31,8 +27,10 @@ export interface EvidenceFit {
   readonly covariances: readonly Float64Array[];
   /** [loads][2]: heat less the cone on paper, in cones, and the load's intercept of gloss. */
   readonly loads: Float64Array;
-  /** [loads][2]: variance of each. */
+  /** [loads][2]: variance of each; that of the loads' spread is in it. */
   readonly loadVariance: Float64Array;
+  /** Per load: how much wider than usual its heat is taken to spread, 1 for a load like the others. */
+  readonly stretch: Float64Array;
   /** Laplace estimate of the log evidence at the scales. */
   readonly logEvidence: number;
   /** Rounds of re-estimation. */
@@ -45,14 +43,20 @@ export interface EvidenceFit {
 export interface EvidenceStart {
   readonly scales: Scales;
   readonly weights?: readonly Float64Array[];
+  /** [loads][2] and per load, as in the fit. */
+  readonly loads?: Float64Array;
+  readonly stretch?: Float64Array;
   /** Largest relative move of a variance, or move of a weight, in the last round; 0.01 where absent. */
   readonly tolerance?: number;
 }
 
 const CONVERGED_MOVE = 0.01;
 const MOST_ROUNDS = 200;
+/** Once the scales approach their end steadily, every few rounds they are carried on to it. */
+const LEAP_EVERY = 3;
+const STEADY_MOVE = 0.3;
 /** Decrement at which the last maximum is near enough, per square of the tolerance. */
-const LAST_DECREMENT = 1e-3;
+const LAST_DECREMENT = 0.01;
 
 /**
  * Fits both stages, and re-estimates from the tiles the prior sds, the spread of the loads and the share
@@ -67,10 +71,14 @@ const LAST_DECREMENT = 1e-3;
  * @param isHeld - whether the scales stay as they are
  * @returns scales, weights, covariance, loads
  *
+ * The heat of the loads follows Student's t: one load that fired far off neither widens the spread of
+ * all nor is pulled in with them.
+ *
  * Sources: fixed point of the sds: D. J. C. MacKay, Neural Computation 4 (1992) 415-447. Averaged
  * likelihood: M. Opper and C. Archambeau, The variational Gaussian approximation revisited, Neural
  * Computation 21 (2009) 786-792. Spread of the sds: R. E. Kass and D. Steffey, Journal of the American
- * Statistical Association 84 (1989) 717-726.
+ * Statistical Association 84 (1989) 717-726. Student's t by scales: K. L. Lange, R. J. A. Little and J. M. G.
+ * Taylor, ibid. 881-896.
  */
 export function evidenceFit(
   design: Design,
@@ -80,48 +88,102 @@ export function evidenceFit(
   const { tolerance = CONVERGED_MOVE } = start;
   let { scales } = start;
   let weights = start.weights ?? design.stages.map((s) => Float64Array.from(s.priorMean));
-  let loads = new Float64Array(2 * design.loadCount);
+  let loads = Float64Array.from(start.loads ?? new Float64Array(2 * design.loadCount));
+  const stretch = Float64Array.from(start.stretch ?? new Float64Array(design.loadCount).fill(1));
+  let before: Scales[] = [];
   let rounds = 0;
   for (let move = Infinity; rounds < MOST_ROUNDS && move > tolerance; rounds++) {
-    const problem = problemAt(design, scales, weights);
-    const from = unknownsAt(design, scales, weights, loads);
-    const step = newtonStep(problem, from);
+    const problem = problemAt(design, scales, weights, stretch);
+    const from = unknownsAt(design, scales, weights, loads, stretch);
+    const step = soundStep(problem, from);
     const unknowns = backtracked(problem, from, step) ?? from;
-    const next = isHeld ? scales : reEstimated(design, problem, scales, unknowns, step);
     const reached = weightsAt(design, scales, unknowns.theta);
-    move = Math.max(isHeld ? 0 : largestMove(scales, next), largestDifference(weights, reached));
+    move = largestDifference(weights, reached);
     weights = reached;
-    loads = loadsAt(scales, unknowns.loads);
+    loads = loadsAt(scales, unknowns.loads, stretch);
+    if (isHeld) continue;
+    const spread = posteriorSpread(step);
+    const next = reEstimated(design, problem, scales, unknowns, spread);
+    move = Math.max(move, largestMove(scales, next));
+    widenOutliers(stretch, unknowns, spread);
+    before = [...before, scales];
     scales = next;
+    if (before.length < LEAP_EVERY || move > STEADY_MOVE) continue;
+    const [first, second] = before.slice(-2) as [Scales, Scales];
+    scales = carriedOn(first, second, next);
+    before = [];
   }
-  return averagedFit(design, { scales, weights, tolerance }, loads, rounds, isHeld);
+  const reached = { scales, weights, loads, stretch, tolerance };
+  return averagedFit(design, reached, rounds, isHeld);
+}
+
+/** In units of the prior no variance is above 1, but for what a few doubtful verdicts do. */
+const MOST_VARIANCE = 1.05;
+
+/** The exact step, unless its curvature leaves less known than the prior does. */
+function soundStep(problem: LatentProblem, unknowns: Unknowns): NewtonStep {
+  const step = exactStep(problem, unknowns);
+  const { covariance, loadVariance } = posteriorSpread(step);
+  let most = loadVariance.reduce((a, b) => Math.max(a, b), 0);
+  for (let j = 0; j < step.theta.length; j++) most = Math.max(most, covariance[lowerIndex(j, j)]!);
+  return most <= MOST_VARIANCE ? step : newtonStep(problem, unknowns);
 }
 
 function averagedFit(
   design: Design,
-  { scales, weights, tolerance }: Required<EvidenceStart>,
-  loads: Float64Array,
+  { scales, weights, loads, stretch, tolerance }: Required<EvidenceStart>,
   rounds: number,
   isHeld: boolean,
 ): EvidenceFit {
-  const problem = problemAt(design, scales, weights);
+  const problem = problemAt(design, scales, weights, stretch);
   const enough = LAST_DECREMENT * tolerance ** 2;
-  const mode = maximum(problem, unknownsAt(design, scales, weights, loads), enough);
+  const mode = maximum(problem, unknownsAt(design, scales, weights, loads, stretch), enough);
   const sds = rowSds(problem, mode.step);
   const centre = maximum(problem, { ...mode.unknowns, sds }, enough);
-  const { covariance, loadVariance } = posteriorSpread(centre.step);
+  // Without the curvature of doubtful verdicts the spread is never too wide for want of digits.
+  const { covariance, loadVariance } = posteriorSpread(newtonStep(problem, centre.unknowns));
   const { theta } = centre.unknowns;
   const widened = isHeld ? covariance : withScalesSpread(design, theta, covariance);
   return {
     scales,
     weights: weightsAt(design, scales, theta),
     covariances: stageCovariances(design, scales, widened),
-    loads: loadsAt(scales, centre.unknowns.loads),
-    loadVariance: loadVariance.map((v, k) => v * loadSd(scales, k) ** 2),
+    loads: loadsAt(scales, centre.unknowns.loads, stretch),
+    loadVariance: loadVariance.map((variance, k) => {
+      const sd = loadSd(scales, k, stretch);
+      const known = isHeld ? 0 : spreadOfOwn(centre.unknowns.loads[k]!, variance, k);
+      return (variance + known) * sd * sd;
+    }),
+    stretch,
     logEvidence: laplaceEvidence(mode.step),
     rounds,
     gradientNorm: centre.step.gradientNorm,
   };
+}
+
+/**
+ * Widens the spread of the loads that stand off from the others: their offsets follow Student's t, whose
+ * spread is re-estimated for each load like a scale of one observation.
+ */
+function widenOutliers(
+  stretch: Float64Array,
+  { loads }: Unknowns,
+  { loadVariance }: PosteriorSpread,
+): void {
+  stretch.forEach((own, l) => {
+    const square = own * own * (loads[2 * l]! ** 2 + loadVariance[2 * l]!);
+    const { degreesOfFreedom } = LOAD_PRIOR;
+    stretch[l] = Math.sqrt((degreesOfFreedom + square) / (degreesOfFreedom + 1));
+  });
+}
+
+/**
+ * What the uncertain spread of a load's heat adds to the variance of its offset, in units of that spread:
+ * the offset moves with the logarithm of the spread by twice itself times its variance.
+ */
+function spreadOfOwn(unknown: number, variance: number, k: number): number {
+  if (k % 2 !== 0) return 0;
+  return (2 * unknown * variance) ** 2 / (2 * (LOAD_PRIOR.degreesOfFreedom + 1));
 }
 
 function reEstimated(
@@ -129,9 +191,8 @@ function reEstimated(
   problem: LatentProblem,
   scales: Scales,
   unknowns: Unknowns,
-  step: NewtonStep,
+  { covariance, loadVariance }: PosteriorSpread,
 ): Scales {
-  const { covariance, loadVariance } = posteriorSpread(step);
   let first = 0;
   const [melt, gloss] = design.stages.map((stage, s): StageScales => {
     const own = scales[stage.name];
@@ -181,8 +242,9 @@ function shareFlipped(
   const { startShare, pseudoTiles } = WRONG_VERDICTS;
   let sum = startShare * pseudoTiles;
   let tiles = pseudoTiles;
+  const logOdds = blockLogOdds(block, first, unknowns);
   for (let i = 0; i < block.count; i++) {
-    const yes = sigmoid(rowLogOdds(block, first, unknowns, i));
+    const yes = sigmoid(logOdds[i]!);
     const outcome = block.outcome[i]!;
     const weight = block.weight[i]!;
     const ifYes = (flipped * (1 - yes)) / (flipped + (1 - 2 * flipped) * yes);

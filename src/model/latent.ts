@@ -1,4 +1,5 @@
 import { lowerIndex } from '../numeric/linalg.ts';
+import { addCrossProducts } from './cross-products.ts';
 import { expectedLikelihood, type Expected } from './label-noise.ts';
 
 /** Unknowns of a load: see `Block.effects`. */
@@ -13,6 +14,8 @@ export interface Block {
   readonly size: number;
   /** [rows][size] */
   readonly rows: Float64Array;
+  /** Prior sd of each column, where the rows are not in units of the prior yet; else 1. */
+  readonly scale?: Float64Array;
   /** Log-odds at the prior means. */
   readonly offset: Float64Array;
   readonly outcome: Float64Array;
@@ -69,16 +72,47 @@ export function weightCount({ blocks }: LatentProblem): number {
  * @param i - which row
  */
 export function rowLogOdds(
-  { size, rows, offset, load, effects }: Block,
+  block: Block,
   first: number,
   { theta, loads }: Unknowns,
   i: number,
 ): number {
+  return logOddsAt(block, scaledWeights(block, first, theta), loads, i);
+}
+
+/** Weights of a block's rows as they are stored. */
+function scaledWeights({ size, scale }: Block, first: number, theta: Float64Array): Float64Array {
+  const weights = theta.slice(first, first + size);
+  if (scale) for (let j = 0; j < size; j++) weights[j]! *= scale[j]!;
+  return weights;
+}
+
+function logOddsAt(
+  { size, rows, offset, load, effects }: Block,
+  weights: Float64Array,
+  loads: Float64Array,
+  i: number,
+): number {
   let sum = offset[i]!;
   const base = i * size;
-  for (let j = 0; j < size; j++) sum += rows[base + j]! * theta[first + j]!;
+  for (let j = 0; j < size; j++) sum += rows[base + j]! * weights[j]!;
   const l = 2 * load[i]!;
   return sum + effects[2 * i]! * loads[l]! + effects[2 * i + 1]! * loads[l + 1]!;
+}
+
+/**
+ * Log-odds of all rows of a block.
+ *
+ * @param block - the block
+ * @param first - place of its first weight in `theta`
+ * @param unknowns - weights and loads
+ * @returns per row
+ */
+export function blockLogOdds(block: Block, first: number, unknowns: Unknowns): Float64Array {
+  const weights = scaledWeights(block, first, unknowns.theta);
+  return Float64Array.from({ length: block.count }, (_, i) =>
+    logOddsAt(block, weights, unknowns.loads, i),
+  );
 }
 
 /**
@@ -94,8 +128,9 @@ export function logDensity(problem: LatentProblem, unknowns: Unknowns): number {
   let first = 0;
   problem.blocks.forEach((block, b) => {
     const sds = unknowns.sds?.[b];
+    const weights = scaledWeights(block, first, unknowns.theta);
     for (let i = 0; i < block.count; i++) {
-      const logOdds = rowLogOdds(block, first, unknowns, i);
+      const logOdds = logOddsAt(block, weights, unknowns.loads, i);
       expectedLikelihood(logOdds, sds ? sds[i]! : 0, block.outcome[i]!, block.flipped, expected);
       sum += block.weight[i]! * expected.value;
     }
@@ -114,13 +149,19 @@ function sumOfSquares(values: Float64Array): number {
  * Log density, its gradient and its negative Hessian.
  *
  * The curvature of a doubtful verdict, which bends the wrong way, is left out: the negative Hessian is
- * positive definite for certain, and exact where no verdict is doubtful. The loads' part falls into blocks of two, since a row belongs to one load.
+ * positive definite for certain, and exact where no verdict is doubtful. The loads' part falls into
+ * blocks of two, since a row belongs to one load.
  *
  * @param problem - the questions
  * @param unknowns - where
+ * @param isExact - keep that curvature; the negative Hessian may then not be positive definite
  * @returns all of them
  */
-export function newtonSystem(problem: LatentProblem, unknowns: Unknowns): NewtonSystem {
+export function newtonSystem(
+  problem: LatentProblem,
+  unknowns: Unknowns,
+  isExact = false,
+): NewtonSystem {
   const width = weightCount(problem);
   const { loadCount } = problem;
   const precision = new Float64Array(lowerIndex(width, 0));
@@ -137,7 +178,7 @@ export function newtonSystem(problem: LatentProblem, unknowns: Unknowns): Newton
   };
   let first = 0;
   problem.blocks.forEach((block, b) => {
-    addBlock(block, first, unknowns, unknowns.sds?.[b], sums);
+    addBlock(block, first, unknowns, { sds: unknowns.sds?.[b], isExact }, sums);
     first += block.size;
   });
   const { likelihood, ...rest } = sums;
@@ -153,65 +194,59 @@ function addBlock(
   block: Block,
   first: number,
   unknowns: Unknowns,
-  sds: Float64Array | undefined,
+  { sds, isExact }: { readonly sds: Float64Array | undefined; readonly isExact: boolean },
   sums: Sums,
 ): void {
   const expected: Expected = { value: 0, slope: 0, curvature: 0 };
+  const weights = scaledWeights(block, first, unknowns.theta);
   const curvatures = new Float64Array(block.count);
+  const gradient = new Float64Array(block.size);
   for (let i = 0; i < block.count; i++) {
-    const logOdds = rowLogOdds(block, first, unknowns, i);
+    const logOdds = logOddsAt(block, weights, unknowns.loads, i);
     expectedLikelihood(logOdds, sds ? sds[i]! : 0, block.outcome[i]!, block.flipped, expected);
     const weight = block.weight[i]!;
     sums.likelihood += weight * expected.value;
-    curvatures[i] = weight * Math.max(0, expected.curvature);
-    addLoad(block, first, i, weight * expected.slope, curvatures[i]!, sums);
+    curvatures[i] = weight * (isExact ? expected.curvature : Math.max(0, expected.curvature));
+    addRow(block, first, i, weight * expected.slope, curvatures[i]!, gradient, sums);
   }
-  addCrossProducts(block, first, curvatures, sums.precision);
+  const products = new Float64Array(lowerIndex(block.size, 0));
+  addCrossProducts(block.rows, block.size, curvatures, products);
+  addScaled(block, first, gradient, products, sums);
 }
 
-/**
- * Adds the rows' weighted cross products: the inner loop of the fit, which takes most of its time. Four
- * rows at once, so that the sums are read and written a quarter as often.
- */
-function addCrossProducts(
-  { count, size, rows }: Block,
+/** From the rows' own units to those of the prior. */
+function addScaled(
+  { size, scale }: Block,
   first: number,
-  curvatures: Float64Array,
-  precision: Float64Array,
+  gradient: Float64Array,
+  products: Float64Array,
+  sums: Sums,
 ): void {
-  let i = 0;
-  for (; i + 4 <= count; i += 4) {
-    const [a, b, c, d] = [i * size, (i + 1) * size, (i + 2) * size, (i + 3) * size];
-    for (let j = 0; j < size; j++) {
-      const p = curvatures[i]! * rows[a + j]!;
-      const q = curvatures[i + 1]! * rows[b + j]!;
-      const r = curvatures[i + 2]! * rows[c + j]!;
-      const s = curvatures[i + 3]! * rows[d + j]!;
-      const cell = lowerIndex(first + j, first);
-      for (let k = 0; k <= j; k++) {
-        precision[cell + k]! +=
-          p * rows[a + k]! + q * rows[b + k]! + (r * rows[c + k]! + s * rows[d + k]!);
-      }
+  const width = sums.gradient.length;
+  for (let j = 0; j < size; j++) {
+    const own = scale?.[j] ?? 1;
+    sums.gradient[first + j]! += own * gradient[j]!;
+    const from = lowerIndex(j, 0);
+    const to = lowerIndex(first + j, first);
+    for (let k = 0; k <= j; k++) {
+      sums.precision[to + k]! += own * (scale?.[k] ?? 1) * products[from + k]!;
     }
   }
-  for (; i < count; i++) {
-    const a = i * size;
-    for (let j = 0; j < size; j++) {
-      const p = curvatures[i]! * rows[a + j]!;
-      const cell = lowerIndex(first + j, first);
-      for (let k = 0; k <= j; k++) precision[cell + k]! += p * rows[a + k]!;
-    }
+  if (!scale) return;
+  for (let base = first; base < sums.coupling.length; base += width) {
+    for (let j = 0; j < size; j++) sums.coupling[base + j]! *= scale[j]!;
   }
 }
 
 /** Adds a row's share in the gradient, and in what concerns its load. */
-function addLoad(
+function addRow(
   { size, rows, load, effects }: Block,
   first: number,
   i: number,
   slope: number,
   curvature: number,
-  { gradient, loadGradient, loadPrecision, coupling }: Sums,
+  gradient: Float64Array,
+  { gradient: { length: width }, loadGradient, loadPrecision, coupling }: Sums,
 ): void {
   const l = load[i]!;
   const [one, two] = [effects[2 * i]!, effects[2 * i + 1]!];
@@ -221,11 +256,11 @@ function addLoad(
   loadPrecision[3 * l + 1]! += curvature * one * two;
   loadPrecision[3 * l + 2]! += curvature * two * two;
   const base = i * size;
-  const toOne = 2 * l * gradient.length + first;
-  const toTwo = toOne + gradient.length;
+  const toOne = 2 * l * width + first;
+  const toTwo = toOne + width;
   for (let j = 0; j < size; j++) {
     const x = rows[base + j]!;
-    gradient[first + j]! += slope * x;
+    gradient[j]! += slope * x;
     coupling[toOne + j]! += curvature * x * one;
     coupling[toTwo + j]! += curvature * x * two;
   }

@@ -1,7 +1,7 @@
 import { dot, quadraticForm } from '../numeric/linalg.ts';
 import { averagedProbability, type GaussianLogOdds } from '../numeric/logistic-normal.ts';
+import { findRoot } from '../numeric/roots.ts';
 import type { Unity } from '../chemistry/unity.ts';
-import { HERMITE_NODES, HERMITE_SHARES } from './label-noise.ts';
 import { columnValues, scaledInputs } from './inputs.ts';
 import type { LoadSpread, Stage, SurfaceProbability } from './model.ts';
 import { radialPlace, radialValues } from './radial.ts';
@@ -81,9 +81,28 @@ export function surfaceProbability(
   };
 }
 
+/** So many offsets of equal weight stand for Student's t. */
+const OFFSETS = 9;
+
+/**
+ * Offsets that each stand for the same share of the loads, in units of their spread: the middles of equal
+ * shares of Student's t with 5 degrees of freedom, whose distribution has a closed form (M. Abramowitz and I. A.
+ * Stegun, Handbook of Mathematical Functions 1964, 26.7.3).
+ */
+const LOAD_OFFSETS: readonly number[] = Array.from({ length: OFFSETS }, (_, k) => {
+  const share = (k + 0.5) / OFFSETS;
+  return findRoot((t) => studentCdf5(t) - share, -10, 10, 1e-12);
+});
+
+function studentCdf5(t: number): number {
+  const x = t / Math.sqrt(5);
+  const c = 1 / (1 + x * x);
+  return 0.5 + (Math.atan(x) + x * c * (1 + (2 / 3) * c)) / Math.PI;
+}
+
 /**
  * Probability of each surface in a load not seen, averaged over how far its heat may be from the cone
- * on paper and over its own intercept of gloss.
+ * on paper (Student's t, as the fit has it) and over its own intercept of gloss.
  *
  * @param model - both stages and the loads' spread
  * @param unity - unity formula
@@ -99,21 +118,36 @@ export function newLoadProbability(
   unity: Unity,
   coneIndex: number,
 ): SurfaceProbability {
-  const { offsetSdCones, glossSd } = model.loadSpread;
+  const { offsetScaleCones, glossSd } = model.loadSpread;
+  const reach = LOAD_OFFSETS.at(-1)! * offsetScaleCones;
+  const melt = logOddsAbout(model.melt, unity, coneIndex, reach, 0);
+  const gloss = logOddsAbout(model.gloss, unity, coneIndex, reach, glossSd);
   const sum = { underfired: 0, matte: 0, gloss: 0 };
-  const add = (offset: number, share: number) => {
-    const cone = coneIndex + offset;
-    const here = surfaceProbability(
-      stageLogOdds(model.melt, unity, cone),
-      stageLogOdds(model.gloss, unity, cone, glossSd),
-    );
-    sum.underfired += share * here.underfired;
-    sum.matte += share * here.matte;
-    sum.gloss += share * here.gloss;
-  };
-  add(0, HERMITE_SHARES[0]!);
-  for (let k = 1; k < HERMITE_NODES.length; k++) {
-    for (const side of [-1, 1]) add(side * offsetSdCones * HERMITE_NODES[k]!, HERMITE_SHARES[k]!);
+  for (const offset of LOAD_OFFSETS) {
+    const at = offset / LOAD_OFFSETS.at(-1)!;
+    const here = surfaceProbability(melt(at), gloss(at));
+    sum.underfired += here.underfired / OFFSETS;
+    sum.matte += here.matte / OFFSETS;
+    sum.gloss += here.gloss / OFFSETS;
   }
   return sum;
+}
+
+/** Log-odds as a function of heat from -1 to 1 times the reach, by the parabola through three cones. */
+function logOddsAbout(
+  stage: StageWeights,
+  unity: Unity,
+  coneIndex: number,
+  reach: number,
+  loadSd: number,
+): (at: number) => GaussianLogOdds {
+  const [low, middle, high] = [-1, 0, 1].map((side) =>
+    stageLogOdds(stage, unity, coneIndex + side * reach, loadSd),
+  ) as [GaussianLogOdds, GaussianLogOdds, GaussianLogOdds];
+  const parabola = (a: number, b: number, c: number, at: number) =>
+    b + ((c - a) / 2) * at + ((a + c) / 2 - b) * at * at;
+  return (at) => ({
+    mean: parabola(low.mean, middle.mean, high.mean, at),
+    sd: Math.max(0, parabola(low.sd, middle.sd, high.sd, at)),
+  });
 }

@@ -1,6 +1,7 @@
 import { choleskyLogDeterminant, dot, lowerIndex } from '../numeric/linalg.ts';
 import type { LatentProblem, Unknowns } from './latent.ts';
-import { maximum, posteriorSpread, type NewtonStep } from './newton.ts';
+import { maximum, type NewtonStep } from './newton.ts';
+import { posteriorSpread } from './spread.ts';
 
 /** Observations of a yes-or-no outcome. */
 export interface LogisticData {

@@ -182,7 +182,7 @@ export const modelShape = z.strictObject({
   archive,
   melt: stage,
   gloss: stage,
-  loadSpread: z.strictObject({ offsetSdCones: positive, glossSd: positive }),
+  loadSpread: z.strictObject({ offsetScaleCones: positive, glossSd: positive }),
   loads: z.array(
     z.strictObject({ load: text, tiles: count, offsetCones: meanAndSd, glossLogOdds: meanAndSd }),
   ),

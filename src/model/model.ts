@@ -33,8 +33,8 @@ export interface LoadEffect {
 
 /** How much loads differ, re-estimated from the tiles. */
 export interface LoadSpread {
-  /** Sd of a load's heat about the cone on paper, in cones. */
-  readonly offsetSdCones: number;
+  /** Spread of a load's heat about the cone on paper, in cones: the scale of a Student's t with 5 degrees. */
+  readonly offsetScaleCones: number;
   /** Sd of a load's own intercept of gloss, log-odds. */
   readonly glossSd: number;
 }

@@ -1,15 +1,8 @@
-import {
-  choleskyFactor,
-  choleskyInverse,
-  choleskySolve,
-  dot,
-  lowerIndex,
-} from '../numeric/linalg.ts';
+import { choleskyFactor, choleskySolve, dot, lowerIndex } from '../numeric/linalg.ts';
 import {
   LOAD_UNKNOWNS,
   logDensity,
   newtonSystem,
-  type Block,
   type LatentProblem,
   type NewtonSystem,
   type Unknowns,
@@ -57,15 +50,33 @@ const FULL_STEP_DECREMENT = 1e-8;
  */
 export function maximum(problem: LatentProblem, start: Unknowns, tolerance: number): Maximum {
   let unknowns = start;
-  let step = newtonStep(problem, unknowns);
+  let step = exactStep(problem, unknowns);
   let iterations = 0;
   for (; iterations < MOST_ITERATIONS && step.decrement > tolerance; iterations++) {
     const next = backtracked(problem, unknowns, step);
     if (next === undefined) break;
     unknowns = next;
-    step = newtonStep(problem, unknowns);
+    step = exactStep(problem, unknowns);
   }
   return { unknowns, step, iterations };
+}
+
+function hasDoubts({ blocks }: LatentProblem): boolean {
+  return blocks.some(({ flipped }) => flipped > 0);
+}
+
+/**
+ * Newton's step with the curvature of doubtful verdicts, which saves steps; without it where the matrix
+ * would not be positive definite.
+ *
+ * @param problem - the questions
+ * @param unknowns - where
+ * @returns step and curvature
+ */
+export function exactStep(problem: LatentProblem, unknowns: Unknowns): NewtonStep {
+  if (!hasDoubts(problem)) return newtonStep(problem, unknowns);
+  const exact = solvedStep(newtonSystem(problem, unknowns, true));
+  return exact ?? newtonStep(problem, unknowns);
 }
 
 /**
@@ -103,17 +114,25 @@ export function backtracked(
  * @returns step and curvature
  */
 export function newtonStep(problem: LatentProblem, unknowns: Unknowns): NewtonStep {
-  const system = newtonSystem(problem, unknowns);
+  const step = solvedStep(newtonSystem(problem, unknowns));
+  if (step === undefined) throw new RangeError('log density must be finite at every point tried');
+  return step;
+}
+
+/** Undefined where the matrix is not positive definite. */
+function solvedStep(system: NewtonSystem): NewtonStep | undefined {
   const { gradient, loadGradient, precision, coupling } = system;
   const width = gradient.length;
   const loadInverse = inverseBlocks(system.loadPrecision);
+  if (loadInverse === undefined) return undefined;
   const pulled = pulledCoupling(coupling, loadInverse, width);
   const reduced = Float64Array.from(precision);
   const right = Float64Array.from(gradient);
   for (let row = 0; row < loadGradient.length; row++) {
     eliminate(reduced, right, pulled, coupling, row * width, loadGradient[row]!);
   }
-  const factor = choleskyFactor(reduced, width);
+  const factor = positiveFactor(reduced, width);
+  if (factor === undefined) return undefined;
   const theta = choleskySolve(factor, right);
   const loads = loadSteps(system, loadInverse, pulled, theta);
   return {
@@ -132,11 +151,21 @@ function largest(values: Float64Array): number {
   return values.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
 }
 
-function inverseBlocks(blocks: Float64Array): Float64Array {
+function positiveFactor(matrix: Float64Array, size: number): Float64Array | undefined {
+  try {
+    return choleskyFactor(matrix, size);
+  } catch (error) {
+    if (error instanceof RangeError) return undefined;
+    throw error;
+  }
+}
+
+function inverseBlocks(blocks: Float64Array): Float64Array | undefined {
   const inverse = new Float64Array(blocks.length);
   for (let at = 0; at < blocks.length; at += 3) {
     const [a, b, c] = [blocks[at]!, blocks[at + 1]!, blocks[at + 2]!];
     const determinant = a * c - b * b;
+    if (!(a > 0 && determinant > 0)) return undefined;
     inverse[at] = c / determinant;
     inverse[at + 1] = -b / determinant;
     inverse[at + 2] = a / determinant;
@@ -194,88 +223,4 @@ function loadSteps(
     const own = inverse[at]! * one + inverse[at + 1]! * two;
     return own - dot(pulled.subarray(row * width, (row + 1) * width), theta);
   });
-}
-
-/**
- * Covariance of the weights and variance of the loads' unknowns, in units of the prior.
- *
- * @param step - Newton's step at the maximum
- * @returns lower triangle, and [loads][2]
- */
-export function posteriorSpread({ factor, loadInverse, pulled, theta }: NewtonStep): {
-  readonly covariance: Float64Array;
-  readonly loadVariance: Float64Array;
-} {
-  const width = theta.length;
-  const covariance = choleskyInverse(factor, width);
-  const loadVariance = new Float64Array((loadInverse.length / 3) * LOAD_UNKNOWNS);
-  for (let row = 0; row < loadVariance.length; row++) {
-    const own = loadInverse[3 * (row >> 1) + 2 * (row % 2)]!;
-    loadVariance[row] = own + sparseQuadraticForm(covariance, pulled, row * width, width);
-  }
-  return { covariance, loadVariance };
-}
-
-/** x' A x for a vector with many zeros: a load without melted tiles says nothing of gloss. */
-function sparseQuadraticForm(
-  lower: Float64Array,
-  vectors: Float64Array,
-  base: number,
-  size: number,
-): number {
-  let sum = 0;
-  for (let i = 0; i < size; i++) {
-    const x = vectors[base + i]!;
-    if (x === 0) continue;
-    const row = lowerIndex(i, 0);
-    let inner = 0;
-    for (let j = 0; j < i; j++) inner += lower[row + j]! * vectors[base + j]!;
-    sum += x * (2 * inner + lower[row + i]! * x);
-  }
-  return sum;
-}
-
-/**
- * Sd of the log-odds of every row under the Gaussian at the maximum, its load included.
- *
- * @param problem - the questions
- * @param step - Newton's step at the maximum
- * @returns per block, per row
- */
-export function rowSds({ blocks }: LatentProblem, step: NewtonStep): Float64Array[] {
-  const place = new Float64Array(step.theta.length);
-  let first = 0;
-  return blocks.map((block) => {
-    const sds = Float64Array.from({ length: block.count }, (_, i) =>
-      Math.sqrt(rowVariance(block, first, i, step, place)),
-    );
-    first += block.size;
-    return sds;
-  });
-}
-
-/** The row less what its load explains, through the factor; `y` is scratch space. */
-function rowVariance(
-  { size, rows, load, effects }: Block,
-  first: number,
-  i: number,
-  { factor, loadInverse, pulled }: NewtonStep,
-  y: Float64Array,
-): number {
-  const width = y.length;
-  const [one, two] = [effects[2 * i]!, effects[2 * i + 1]!];
-  const at = LOAD_UNKNOWNS * load[i]! * width;
-  for (let j = 0; j < width; j++) y[j] = -(pulled[at + j]! * one + pulled[at + width + j]! * two);
-  for (let j = 0; j < size; j++) y[first + j]! += rows[i * size + j]!;
-  const block = 3 * load[i]!;
-  const [a, b, c] = [loadInverse[block]!, loadInverse[block + 1]!, loadInverse[block + 2]!];
-  let variance = a * one * one + 2 * b * one * two + c * two * two;
-  for (let r = 0; r < width; r++) {
-    let sum = y[r]!;
-    const row = lowerIndex(r, 0);
-    for (let k = 0; k < r; k++) sum -= factor[row + k]! * y[k]!;
-    y[r] = sum / factor[row + r]!;
-    variance += y[r]! * y[r]!;
-  }
-  return variance;
 }

@@ -16,8 +16,9 @@ export interface StagePrior {
 
 /** What the loads of an archive differ in, before any tile. */
 export const LOAD_PRIOR = {
-  /** Sd of a load's heat about the cone on paper, in cones. */
-  startOffsetCones: 0.15,
+  /** Sd of a load's heat about the cone on paper, in cones: of the middle of a Student's t. */
+  startOffsetCones: 0.2,
+  degreesOfFreedom: 5,
   /** Sd of what cooling and atmosphere do to the gloss of a load, log-odds. */
   startGlossSd: 0.3,
 } as const;

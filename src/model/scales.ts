@@ -99,6 +99,33 @@ export function groupDepartures(
   return departures;
 }
 
+/** Logarithms of all variances and shares, in one order. */
+function logsOf({ melt, gloss, loads }: Scales): number[] {
+  return [
+    ...[melt, gloss].flatMap(({ groups, residual, flipped }) => [
+      ...[...groups, residual].map((sd) => 2 * Math.log(sd)),
+      Math.log(flipped),
+    ]),
+    2 * Math.log(loads.offsetCones),
+    2 * Math.log(loads.gloss),
+  ];
+}
+
+function fromLogs(logs: readonly number[], like: Scales): Scales {
+  let at = 0;
+  const sd = () => Math.exp(logs[at++]! / 2);
+  const stage = ({ groups }: StageScales): StageScales => ({
+    groups: groups.map(sd),
+    residual: sd(),
+    flipped: Math.exp(logs[at++]!),
+  });
+  return {
+    melt: stage(like.melt),
+    gloss: stage(like.gloss),
+    loads: { offsetCones: sd(), gloss: sd() },
+  };
+}
+
 /**
  * Largest relative move between two scales: of a variance or a share.
  *
@@ -107,14 +134,31 @@ export function groupDepartures(
  * @returns largest difference of logarithms
  */
 export function largestMove(before: Scales, after: Scales): number {
-  const of = ({ melt, gloss, loads }: Scales) => [
-    ...[melt, gloss].flatMap(({ groups, residual, flipped }) => [
-      ...[...groups, residual].map((sd) => 2 * Math.log(sd)),
-      Math.log(flipped),
-    ]),
-    2 * Math.log(loads.offsetCones),
-    2 * Math.log(loads.gloss),
-  ];
-  const to = of(after);
-  return of(before).reduce((most, value, i) => Math.max(most, Math.abs(value - to[i]!)), 0);
+  const to = logsOf(after);
+  return logsOf(before).reduce((most, value, i) => Math.max(most, Math.abs(value - to[i]!)), 0);
+}
+
+/** Only a steady approach is carried on, and no farther than this, in logarithms. */
+const STEADY = { least: 0.3, most: 0.97 } as const;
+const LONGEST_LEAP = 1;
+
+/**
+ * Where three scales in a row lead to, each approaching its end by a steady share of what is left.
+ *
+ * @param first - scales two rounds ago
+ * @param second - a round ago
+ * @param third - now
+ * @returns scales nearer to the end; those that do not approach steadily stay
+ *
+ * Source: A. C. Aitken's delta squared, Proceedings of the Royal Society of Edinburgh 46 (1926) 289-305.
+ */
+export function carriedOn(first: Scales, second: Scales, third: Scales): Scales {
+  const [a, b] = [logsOf(first), logsOf(second)];
+  const ends = logsOf(third).map((c, i) => {
+    const share = (c - b[i]!) / (b[i]! - a[i]!);
+    if (!(share > STEADY.least && share < STEADY.most)) return c;
+    const leap = ((c - b[i]!) * share) / (1 - share);
+    return c + Math.max(-LONGEST_LEAP, Math.min(LONGEST_LEAP, leap));
+  });
+  return fromLogs(ends, third);
 }

@@ -7,10 +7,11 @@ import type { Scales } from './scales.ts';
  *
  * @param scales - sds
  * @param k - place of the unknown
+ * @param stretch - how much wider than usual each load's heat is taken to spread; 1 where absent
  * @returns cones or log-odds
  */
-export function loadSd({ loads }: Scales, k: number): number {
-  return k % 2 === 0 ? loads.offsetCones : loads.gloss;
+export function loadSd({ loads }: Scales, k: number, stretch?: Float64Array): number {
+  return k % 2 === 0 ? loads.offsetCones * (stretch?.[k / 2] ?? 1) : loads.gloss;
 }
 
 /**
@@ -18,10 +19,15 @@ export function loadSd({ loads }: Scales, k: number): number {
  *
  * @param scales - sds
  * @param unknowns - [loads][2], in units of the prior
+ * @param stretch - per load
  * @returns [loads][2], cones and log-odds
  */
-export function loadsAt(scales: Scales, unknowns: Float64Array): Float64Array<ArrayBuffer> {
-  return Float64Array.from(unknowns, (u, k) => u * loadSd(scales, k));
+export function loadsAt(
+  scales: Scales,
+  unknowns: Float64Array,
+  stretch?: Float64Array,
+): Float64Array<ArrayBuffer> {
+  return Float64Array.from(unknowns, (u, k) => u * loadSd(scales, k, stretch));
 }
 
 /**
@@ -43,6 +49,7 @@ export function sdsOf({ name, groupOf }: StageDesign, scales: Scales): number[] 
  * @param scales - sds
  * @param weights - per stage
  * @param loads - [loads][2], cones and log-odds
+ * @param stretch - per load
  * @returns the unknowns of the problem
  */
 export function unknownsAt(
@@ -50,13 +57,14 @@ export function unknownsAt(
   scales: Scales,
   weights: readonly Float64Array[],
   loads: Float64Array,
+  stretch?: Float64Array,
 ): Unknowns {
   const theta = design.stages.flatMap((stage, s) =>
     sdsOf(stage, scales).map((sd, j) => (weights[s]![j]! - stage.priorMean[j]!) / sd),
   );
   return {
     theta: Float64Array.from(theta),
-    loads: loads.map((value, k) => value / loadSd(scales, k)),
+    loads: loads.map((value, k) => value / loadSd(scales, k, stretch)),
   };
 }
 

@@ -125,12 +125,33 @@ export function choleskyLogDeterminant(factor: LowerTriangle, size: number): num
  * Array.from(choleskyInverse(Float64Array.of(2, 0, 4), 2)); // [0.25, 0, 0.0625]
  */
 export function choleskyInverse(factor: LowerTriangle, size: number): LowerTriangle {
+  const ofFactor = lowerInverse(factor, size);
   const inverse = new Float64Array(factor.length);
-  for (let column = 0; column < size; column++) {
-    const unit = new Float64Array(size);
-    unit[column] = 1;
-    const solution = choleskySolve(factor, unit);
-    for (let row = column; row < size; row++) inverse[lowerIndex(row, column)] = solution[row]!;
+  // A^-1 is the sum of the outer products of the rows of L^-1: rows are read as they are stored.
+  for (let k = 0; k < size; k++) {
+    const row = lowerIndex(k, 0);
+    for (let i = 0; i <= k; i++) {
+      const scale = ofFactor[row + i]!;
+      const cell = lowerIndex(i, 0);
+      for (let j = 0; j <= i; j++) inverse[cell + j]! += scale * ofFactor[row + j]!;
+    }
+  }
+  return inverse;
+}
+
+/** Inverse of a lower triangle, row by row. */
+function lowerInverse(factor: LowerTriangle, size: number): LowerTriangle {
+  const inverse = new Float64Array(factor.length);
+  for (let i = 0; i < size; i++) {
+    const row = lowerIndex(i, 0);
+    for (let k = 0; k < i; k++) {
+      const scale = factor[row + k]!;
+      const other = lowerIndex(k, 0);
+      for (let j = 0; j <= k; j++) inverse[row + j]! -= scale * inverse[other + j]!;
+    }
+    const pivot = factor[row + i]!;
+    for (let j = 0; j < i; j++) inverse[row + j]! /= pivot;
+    inverse[row + i] = 1 / pivot;
   }
   return inverse;
 }

@@ -23,9 +23,10 @@ export function loadSection(
   const heading = 'Loads that stand out';
   const count = loads.length;
   if (count < 2) return { heading, lines: [] };
+  // Of a Student's t with 5 degrees of freedom 64 % lie within its scale.
   const spread =
-    `Loads differ in heat by about ${fixed(loadSpread.offsetSdCones, 2)} cone (sd) from the cone on ` +
-    'paper. An error that all loads share cannot be seen.';
+    `About two loads in three lie within ${fixed(loadSpread.offsetScaleCones, 2)} cone of their cone ` +
+    'on paper. An error that all loads share cannot be seen.';
   const words = [
     ...loads.filter(({ offsetCones }) => standsOut(offsetCones)).map(heatWords),
     ...loads.filter(({ glossLogOdds }) => standsOut(glossLogOdds)).map(glossWords),

@@ -53,8 +53,8 @@ it('keeps columns with the names of object internals as data', () => {
 it('is refused by the writer if a number is not finite', () => {
   const broken: Model = { ...model, logEvidence: Number.NaN };
   expect(() => modelText(broken)).toThrow('finite numbers only, logEvidence is NaN');
-  const far: Model = { ...model, loadSpread: { ...model.loadSpread, offsetSdCones: Infinity } };
-  expect(() => modelText(far)).toThrow('finite numbers only, offsetSdCones is Infinity');
+  const far: Model = { ...model, loadSpread: { ...model.loadSpread, offsetScaleCones: Infinity } };
+  expect(() => modelText(far)).toThrow('finite numbers only, offsetScaleCones is Infinity');
 });
 
 describe('a file that is no model', () => {
@@ -141,8 +141,8 @@ describe('a damaged model', () => {
     ],
     [
       'a spread of loads below 0',
-      text.replace('"offsetSdCones":', '"offsetSdCones":-'),
-      'loadSpread.offsetSdCones',
+      text.replace('"offsetScaleCones":', '"offsetScaleCones":-'),
+      'loadSpread.offsetScaleCones',
     ],
     [
       'a weight changed by hand',

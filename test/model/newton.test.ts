@@ -2,13 +2,8 @@ import { inverse, Matrix, solve } from 'ml-matrix';
 import { describe, expect, it } from 'vitest';
 import { weightCount, type LatentProblem, type Unknowns } from '../../src/model/latent.ts';
 import { laplaceEvidence } from '../../src/model/logistic.ts';
-import {
-  backtracked,
-  maximum,
-  newtonStep,
-  posteriorSpread,
-  rowSds,
-} from '../../src/model/newton.ts';
+import { backtracked, maximum, newtonStep } from '../../src/model/newton.ts';
+import { posteriorSpread, rowSds } from '../../src/model/spread.ts';
 import { denseFactor, symmetricMatrix } from '../support/dense.ts';
 import {
   densePrecision,

@@ -44,7 +44,7 @@ describe('priors', () => {
   });
 
   it('of loads and wrong verdicts are those that were chosen', () => {
-    expect(LOAD_PRIOR).toEqual({ startOffsetCones: 0.15, startGlossSd: 0.3 });
+    expect(LOAD_PRIOR).toEqual({ startOffsetCones: 0.2, degreesOfFreedom: 5, startGlossSd: 0.3 });
     expect(WRONG_VERDICTS).toEqual({ startShare: 0.015, pseudoTiles: 100 });
   });
 

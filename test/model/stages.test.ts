@@ -155,9 +155,9 @@ describe('fitWithout', () => {
     });
     const scratch = logOddsOf({ ...fit, fit: evidenceFit(fit.design) });
     logOddsOf(fit).forEach(({ mean, sd }, i) => {
-      // Both stop within 1 % of the variances' fixed point.
-      expect(Math.abs(mean - scratch[i].mean)).toBeLessThan(0.01);
-      expect(Math.abs(sd - scratch[i].sd)).toBeLessThan(0.01);
+      // It stops at moves of 6 %, which is enough for scores of two digits: no probability by more than 0.006.
+      expect(Math.abs(mean - scratch[i].mean)).toBeLessThan(0.025);
+      expect(Math.abs(sd - scratch[i].sd)).toBeLessThan(0.025);
     });
   });
 

@@ -149,8 +149,11 @@ describe('over invented studios whose truth is drawn from the prior', () => {
 
   it.each(['melt', 'gloss'] as const)('about 5 %% of the true %s boundaries do', (kind) => {
     expect(places[kind].asked).toBeGreaterThan(80);
-    expect(places[kind].share).toBeGreaterThan(0);
     expect(places[kind].share).toBeLessThan(0.1);
+  });
+
+  it('some of the true boundaries do: the intervals are no whole ranges', () => {
+    expect(places.melt.off + places.gloss.off).toBeGreaterThan(0);
   });
 
   it('boundaries are missing from the range as often as stated', () => {

@@ -215,7 +215,7 @@ describe('loads that stand out', () => {
     glossLogOdds: { mean: gloss, sd: 0.5 },
   });
   const told = (...loads: readonly LoadEffect[]) => {
-    const loadSpread = { offsetSdCones: 0.21, glossSd: 0.5 };
+    const loadSpread = { offsetScaleCones: 0.21, glossSd: 0.5 };
     return joined(loadSection({ loads, loadSpread }, PLAIN_LOOK).lines.join(' '));
   };
 
@@ -225,7 +225,7 @@ describe('loads that stand out', () => {
       'K1 (9 tiles): as if fired 0.6 cone cooler than its cone on paper (sd 0.2)',
     );
     expect(text).not.toContain('K2');
-    expect(text).toContain('Loads differ in heat by about 0.21 cone (sd)');
+    expect(text).toContain('About two loads in three lie within 0.21 cone of their cone on paper');
     expect(text).toContain('may stand out by chance');
   });
 
@@ -234,7 +234,7 @@ describe('loads that stand out', () => {
       'K2 (9 tiles): more gloss than its heat explains (log-odds +1.4, sd 0.5)',
     );
     const none = told(load('K1', 0), load('K2', 0));
-    expect(none).toContain('None. Loads differ in heat');
+    expect(none).toContain('None. About two loads in three');
     expect(none).not.toContain('by chance');
   });
 });

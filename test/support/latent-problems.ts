@@ -69,7 +69,9 @@ export function denseRows(problem: LatentProblem, unknowns: Unknowns): DenseRow[
     first += block.size;
     return Array.from({ length: block.count }, (_, i): DenseRow => {
       const effects = Array.from({ length: size + 2 * problem.loadCount }, () => 0);
-      for (let j = 0; j < block.size; j++) effects[base + j] = block.rows[i * block.size + j];
+      for (let j = 0; j < block.size; j++) {
+        effects[base + j] = block.rows[i * block.size + j] * (block.scale?.[j] ?? 1);
+      }
       effects[size + 2 * block.load[i]] = block.effects[2 * i];
       effects[size + 2 * block.load[i] + 1] = block.effects[2 * i + 1];
       const into = { value: 0, slope: 0, curvature: 0 };
