@@ -1,5 +1,5 @@
 import { log1pExp, sigmoid } from './logistic.ts';
-import { normalCdf, normalDensity, normalQuantile } from './normal.ts';
+import { normalCdf, normalCdfFrom, normalDensity, normalQuantile } from './normal.ts';
 import { normalMean } from './quadrature.ts';
 import { findRoot } from './roots.ts';
 
@@ -65,15 +65,57 @@ export function productQuantile(
 ): number {
   const [outer, inner] = first.sd < second.sd ? [first, second] : [second, first];
   if (outer.sd === 0) return sigmoid(outer.mean) * probabilityQuantile(inner, p);
-  const excess = (logOddsOfProduct: number) => productCdf(logOddsOfProduct, outer, inner) - p;
   // P(XY < xy) <= P(X < x) + P(Y < y): the quantile lies between these two products.
   const bound = (each: number) => {
     const z = normalQuantile(each);
     return productLogOdds(outer.mean + outer.sd * z, inner.mean + inner.sd * z);
   };
-  return sigmoid(findRoot(excess, bound(p / 2), bound((1 + p) / 2), 1e-9));
+  const bracket = [bound(p / 2), bound((1 + p) / 2)] as const;
+  const start = linearisedQuantile(outer, inner, normalQuantile(p));
+  const quick = newtonQuantile(outer, inner, p, bracket, start);
+  if (quick !== undefined) return sigmoid(quick);
+  const excess = (logOddsOfProduct: number) => productCdf(logOddsOfProduct, outer, inner) - p;
+  return sigmoid(findRoot(excess, ...bracket, 1e-9));
 }
 
+/** The quantile if the product's log-odds were linear in those of both. */
+function linearisedQuantile(first: GaussianLogOdds, second: GaussianLogOdds, z: number): number {
+  const logOdds = productLogOdds(first.mean, second.mean);
+  const missed = sigmoid(-logOdds);
+  if (missed === 0) return logOdds;
+  const [ofFirst, ofSecond] = [sigmoid(-first.mean) / missed, sigmoid(-second.mean) / missed];
+  return logOdds + z * Math.hypot(ofFirst * first.sd, ofSecond * second.sd);
+}
+
+/** Newton's steps are quadratic: after one so small the next is lost in rounding. */
+const SMALL_STEP = 1e-7;
+const MOST_STEPS = 30;
+
+/** Newton's method within a bracket; undefined where it does not settle or the odds would underflow. */
+function newtonQuantile(
+  outer: GaussianLogOdds,
+  inner: GaussianLogOdds,
+  p: number,
+  [lowest, highest]: readonly [number, number],
+  start: number,
+): number | undefined {
+  if (lowest < QUICK_LOG_ODDS[0] || highest > QUICK_LOG_ODDS[1]) return undefined;
+  let [low, high] = [lowest, highest];
+  let at = Math.min(Math.max(start, low), high);
+  for (let step = 0; step < MOST_STEPS; step++) {
+    const { share, density } = quickCdf(at, outer, inner);
+    const excess = share - p;
+    if (excess > 0) high = at;
+    else low = at;
+    const next = at - excess / density;
+    const isInside = next > low && next < high;
+    const moved = isInside ? next : (low + high) / 2;
+    if (Math.abs(moved - at) < SMALL_STEP && isInside) return moved;
+    if (high - low < 1e-9) return moved;
+    at = moved;
+  }
+  return undefined;
+}
 /** From here on a probability is 1 in double precision. */
 const SURE_LOG_ODDS = 745;
 
@@ -124,4 +166,52 @@ function productCdf(logOddsOfQ: number, outer: GaussianLogOdds, inner: GaussianL
     sum += normalDensity(x) * Math.exp(logShare) * normalCdf(y);
   }
   return below + (sum * step) / outer.sd;
+}
+
+/** Between these the odds and what is left of 1 are far from underflow. */
+const QUICK_LOG_ODDS = [-200, 30] as const;
+/** An error of exp(-2 pi^2 / 0.7) = 6e-13; beyond 7 sds 3e-12 is left. */
+const QUICK_STEP = 0.7;
+const QUICK_SDS = 7;
+
+/**
+ * The product's distribution as in `productCdf`, and its density per unit of log-odds, from odds instead of
+ * their logarithms: two exponentials and two logarithms a node. With y the log-odds of q / X, dy / d(log-odds
+ * of q) is 1 + q e^-v, which cancels the share of v in dx: the density is the plain product of both.
+ */
+function quickCdf(
+  logOddsOfQ: number,
+  outer: GaussianLogOdds,
+  inner: GaussianLogOdds,
+): { readonly share: number; readonly density: number } {
+  const q = sigmoid(logOddsOfQ);
+  const log1MinusQ = -log1pExp(logOddsOfQ);
+  const logQ = -log1pExp(-logOddsOfQ);
+  const below = normalCdf((logOddsOfQ - outer.mean) / outer.sd);
+  const vAt = (logOdds: number) => {
+    const sum = logOdds + log1MinusQ;
+    return sum > logQ ? sum + Math.log1p(-Math.exp(logQ - sum)) : -Infinity;
+  };
+  const low = Math.max(LOWEST_V + Math.min(0, logQ), vAt(outer.mean - QUICK_SDS * outer.sd));
+  const high = vAt(outer.mean + QUICK_SDS * outer.sd);
+  if (!(high > low)) return { share: below, density: 0 };
+  const widest = Math.min(0.8 * outer.sd, Math.max(QUICK_STEP, outer.sd / 100));
+  const cells = Math.ceil((high - low) / widest);
+  const step = (high - low) / cells;
+  let share = 0;
+  let density = 0;
+  for (let i = 0; i <= cells; i++) {
+    const odds = Math.exp(low + i * step);
+    const x = (Math.log(odds + q) - log1MinusQ - outer.mean) / outer.sd;
+    const y = (logOddsOfQ + Math.log1p(1 / odds) - inner.mean) / inner.sd;
+    const ofX = Math.exp(-0.5 * x * x);
+    const ofY = Math.exp(-0.5 * y * y);
+    share += ofX * (odds / (odds + q)) * normalCdfFrom(y, ofY);
+    density += ofX * ofY;
+  }
+  const scale = step / (outer.sd * Math.sqrt(2 * Math.PI));
+  return {
+    share: below + share * scale,
+    density: (density * scale) / (inner.sd * Math.sqrt(2 * Math.PI)),
+  };
 }

@@ -48,8 +48,12 @@ const NAMED_TILES = 5;
 /** The tiles that a point is compared with. */
 export interface Experience {
   readonly tiles: readonly Tile[];
-  /** Oxides in steps, [tiles][oxides]. */
+  /** The oxides that any tile holds, as places in the list of all. */
+  readonly held: readonly number[];
+  /** Those oxides in steps, [tiles][held]. */
   readonly steps: Float64Array;
+  /** Cone of each tile, as a number. */
+  readonly cones: Float64Array;
 }
 
 /**
@@ -63,11 +67,14 @@ export function experienceOf(tiles: readonly Tile[]): Experience {
   const known = tiles
     .filter(({ heat }) => heat !== undefined)
     .sort((a, b) => (a.tile < b.tile ? -1 : 1));
-  const steps = new Float64Array(known.length * OXIDES.length);
-  known.forEach(({ unity }, i) => {
-    steps.set(stepsOf(unity), i * OXIDES.length);
-  });
-  return { tiles: known, steps };
+  const rows = known.map(({ unity }) => stepsOf(unity));
+  const held = OXIDES.flatMap((_, j) => (rows.some((row) => row[j] !== 0) ? [j] : []));
+  return {
+    tiles: known,
+    held,
+    steps: Float64Array.from(rows.flatMap((row) => held.map((j) => row[j]!))),
+    cones: Float64Array.from(known, ({ heat }) => heat!.coneIndex),
+  };
 }
 
 /**
@@ -77,14 +84,20 @@ export function experienceOf(tiles: readonly Tile[]): Experience {
  * @param unity - unity formula
  * @returns sum of squares of steps, per tile
  */
-export function squaredSteps({ tiles, steps }: Experience, unity: Unity): Float64Array {
-  const point = stepsOf(unity);
-  const width = OXIDES.length;
-  return Float64Array.from(tiles, (_, i) => {
-    let sum = 0;
-    for (let j = 0; j < width; j++) sum += (steps[i * width + j]! - point[j]!) ** 2;
-    return sum;
-  });
+export function squaredSteps({ tiles, held, steps }: Experience, unity: Unity): Float64Array {
+  const all = stepsOf(unity);
+  const point = Float64Array.from(held, (j) => all[j]!);
+  // What no tile holds is equally far from all of them.
+  const apart = all.reduce((sum, step, j) => (held.includes(j) ? sum : sum + step * step), 0);
+  const squares = new Float64Array(tiles.length).fill(apart);
+  const width = held.length;
+  for (let i = 0, at = 0; i < squares.length; i++) {
+    for (let j = 0; j < width; j++, at++) {
+      const off = steps[at]! - point[j]!;
+      squares[i]! += off * off;
+    }
+  }
+  return squares;
 }
 
 /** How far inside the experience a point is. */
@@ -108,12 +121,16 @@ export interface Surroundings {
  * @returns support, count and the nearest tiles
  */
 export function surroundings(
-  { tiles }: Experience,
+  { tiles, cones }: Experience,
   squares: Float64Array,
   coneIndex: number,
 ): Surroundings {
-  const distance = distances(tiles, squares, coneIndex);
-  const within = (radius: number) => distance.reduce((n, d) => n + (d <= radius ? 1 : 0), 0);
+  const distance = distances(cones, squares, coneIndex);
+  const within = (radius: number) => {
+    let count = 0;
+    for (let i = 0; i < distance.length; i++) if (distance[i]! <= radius) count++;
+    return count;
+  };
   const tilesWithinEdge = within(EDGE_STEPS);
   const support =
     within(INSIDE_STEPS) >= TILES_NEEDED
@@ -135,22 +152,25 @@ export function surroundings(
  * @returns the tiles with their distances
  */
 export function tilesWithin(
-  { tiles }: Experience,
+  { tiles, cones }: Experience,
   squares: Float64Array,
   coneIndex: number,
   radius: number,
 ): NearTile[] {
-  const distance = distances(tiles, squares, coneIndex);
+  const distance = distances(cones, squares, coneIndex);
   return tiles
     .map((tile, i) => nearTile(tile, distance[i]!))
     .filter((_, i) => distance[i]! <= radius)
     .sort((a, b) => a.distance - b.distance);
 }
 
-function distances(tiles: readonly Tile[], squares: Float64Array, coneIndex: number): Float64Array {
-  return squares.map((square, i) =>
-    Math.hypot(Math.sqrt(square), (tiles[i]!.heat!.coneIndex - coneIndex) / CONES_PER_STEP),
-  );
+function distances(cones: Float64Array, squares: Float64Array, coneIndex: number): Float64Array {
+  const distance = new Float64Array(squares.length);
+  for (let i = 0; i < distance.length; i++) {
+    const heat = (cones[i]! - coneIndex) / CONES_PER_STEP;
+    distance[i] = Math.sqrt(squares[i]! + heat * heat);
+  }
+  return distance;
 }
 
 function nearTile({ tile, verdict, heat }: Tile, distance: number): NearTile {
@@ -161,12 +181,15 @@ function nearTile({ tile, verdict, heat }: Tile, distance: number): NearTile {
 /** Places of the smallest values, smallest first; equal ones by name of the tile. */
 function smallest(values: Float64Array, count: number): number[] {
   const found: number[] = [];
-  values.forEach((value, i) => {
-    if (found.length === count && value >= values[found[count - 1]!]!) return;
+  let most = Infinity;
+  for (let i = 0; i < values.length; i++) {
+    const value = values[i]!;
+    if (found.length === count && value >= most) continue;
     const at = found.findIndex((other) => values[other]! > value);
     found.splice(at < 0 ? found.length : at, 0, i);
     if (found.length > count) found.pop();
-  });
+    most = values[found.at(-1)!]!;
+  }
   return found;
 }
 

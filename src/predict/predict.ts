@@ -175,13 +175,11 @@ function tailNotes(probability: SurfaceProbability, interval90: SurfaceInterval9
 }
 
 /** Heat beyond the tiles of glazes like this one: what is not modelled there. */
-function heatNotes({ tiles }: Experience, squares: Float64Array, coneIndex: number): string[] {
-  if (tiles.length === 0) return ['no judged tile at all: this is what is usual elsewhere'];
-  const near = tiles.filter((_, i) => squares[i]! <= EDGE_STEPS ** 2);
-  const like = near.length > 0 ? 'tile of such a glaze' : 'tile';
-  const heats = (near.length > 0 ? near : tiles).map(({ heat }) => heat!.coneIndex);
-  const hottest = heats.reduce((a, b) => Math.max(a, b));
-  const coolest = heats.reduce((a, b) => Math.min(a, b));
+function heatNotes({ cones }: Experience, squares: Float64Array, coneIndex: number): string[] {
+  if (cones.length === 0) return ['no judged tile at all: this is what is usual elsewhere'];
+  const near = rangeWhere(cones, (i) => squares[i]! <= EDGE_STEPS ** 2);
+  const [coolest, hottest] = near ?? rangeWhere(cones, () => true)!;
+  const like = near ? 'tile of such a glaze' : 'tile';
   if (coneIndex > hottest) {
     return [
       `hotter than the hottest judged ${like} (cone ${coneText(hottest)}): running and blistering ` +
@@ -190,4 +188,17 @@ function heatNotes({ tiles }: Experience, squares: Float64Array, coneIndex: numb
   }
   if (coneIndex >= coolest) return [];
   return [`cooler than the coolest judged ${like} (cone ${coneText(coolest)})`];
+}
+
+function rangeWhere(
+  values: Float64Array,
+  counts: (i: number) => boolean,
+): readonly [number, number] | undefined {
+  let [low, high] = [Infinity, -Infinity];
+  for (let i = 0; i < values.length; i++) {
+    if (!counts(i)) continue;
+    low = Math.min(low, values[i]!);
+    high = Math.max(high, values[i]!);
+  }
+  return low <= high ? [low, high] : undefined;
 }
