@@ -12,6 +12,7 @@ import {
   fixedPointSd,
   groupDepartures,
   largestMove,
+  PSEUDO_OBSERVATIONS,
   startingScales,
   type Scales,
   type StageScales,
@@ -143,17 +144,17 @@ function averagedFit(
   // Without the curvature of doubtful verdicts the spread is never too wide for want of digits.
   const { covariance, loadVariance } = posteriorSpread(newtonStep(problem, centre.unknowns));
   const { theta } = centre.unknowns;
+  const none = new Float64Array(loadVariance.length);
+  const more = isHeld ? none : spreadOfOffsets(centre.unknowns.loads, loadVariance);
   const widened = isHeld ? covariance : withScalesSpread(design, theta, covariance);
   return {
     scales,
     weights: weightsAt(design, scales, theta),
     covariances: stageCovariances(design, scales, widened),
     loads: loadsAt(scales, centre.unknowns.loads, stretch),
-    loadVariance: loadVariance.map((variance, k) => {
-      const sd = loadSd(scales, k, stretch);
-      const known = isHeld ? 0 : spreadOfOwn(centre.unknowns.loads[k]!, variance, k);
-      return (variance + known) * sd * sd;
-    }),
+    loadVariance: loadVariance.map(
+      (variance, k) => (variance + more[k]!) * loadSd(scales, k, stretch) ** 2,
+    ),
     stretch,
     logEvidence: laplaceEvidence(mode.step),
     rounds,
@@ -179,11 +180,16 @@ function widenOutliers(
 
 /**
  * What the uncertain spread of a load's heat adds to the variance of its offset, in units of that spread:
- * the offset moves with the logarithm of the spread by twice itself times its variance.
+ * the offset moves with the logarithm of the spread by twice itself times its variance. The spread of all
+ * loads and the load's own stretch are both uncertain.
  */
-function spreadOfOwn(unknown: number, variance: number, k: number): number {
-  if (k % 2 !== 0) return 0;
-  return (2 * unknown * variance) ** 2 / (2 * (LOAD_PRIOR.degreesOfFreedom + 1));
+function spreadOfOffsets(unknowns: Float64Array, loadVariance: Float64Array): Float64Array {
+  let determined = PSEUDO_OBSERVATIONS;
+  for (let k = 0; k < loadVariance.length; k += 2) determined += 1 - loadVariance[k]!;
+  const ofLogSpread = 1 / (2 * determined) + 1 / (2 * (LOAD_PRIOR.degreesOfFreedom + 1));
+  return loadVariance.map((variance, k) =>
+    k % 2 === 0 ? (2 * unknowns[k]! * variance) ** 2 * ofLogSpread : 0,
+  );
 }
 
 function reEstimated(

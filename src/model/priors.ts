@@ -74,17 +74,17 @@ export const MELT_PRIOR: StagePrior = {
 export const GLOSS_PRIOR: StagePrior = {
   startResidualSd: 0.6,
   groups: [
-    { name: 'intercept', startSd: 2, means: { '1': 3 } },
-    { name: 'ratio', startSd: 1.2, means: { ratio: 4 } },
+    { name: 'intercept', startSd: 2, means: { '1': 2 } },
+    { name: 'ratio', startSd: 1.5, means: { ratio: 4 } },
     {
       name: 'oxides',
-      startSd: 0.5,
+      startSd: 0.6,
       means: { SiO2: 0, Al2O3: 0, B2O3: 0.5, KNaO: 0, MgO: -0.5, ZnO: 0 },
     },
-    { name: 'heat', startSd: 0.3, means: { heat: 0.4 } },
+    { name: 'heat', startSd: 0.42, means: { heat: 0.4 } },
     {
       name: 'interactions',
-      startSd: 0.2,
+      startSd: 0.3,
       means: {
         'ratio^2': 0,
         'SiO2^2': 0,

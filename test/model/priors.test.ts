@@ -19,9 +19,9 @@ const MELT = `
   SiO2*B2O3 0 0.25, Al2O3*B2O3 0 0.25, SiO2*heat 0 0.25, Al2O3*heat 0 0.25, B2O3*heat 0 0.25,
   SiO2*KNaO 0 0.25, Al2O3*KNaO 0 0.25, B2O3^2 0 0.25, heat^2 0 0.25, KNaO*heat 0 0.25`;
 const GLOSS = `
-  1 3 2, ratio 4 1.2, SiO2 0 0.5, Al2O3 0 0.5, B2O3 0.5 0.5, KNaO 0 0.5, MgO -0.5 0.5, ZnO 0 0.5,
-  heat 0.4 0.3, ratio^2 0 0.2, SiO2^2 0 0.2, Al2O3^2 0 0.2, SiO2*Al2O3 0 0.2, ratio*B2O3 0 0.2,
-  ratio*heat 0 0.2, B2O3*heat 0 0.2, heat^2 0 0.2, B2O3^2 0 0.2, ratio*KNaO 0 0.2, ratio*MgO 0 0.2`;
+  1 2 2, ratio 4 1.5, SiO2 0 0.6, Al2O3 0 0.6, B2O3 0.5 0.6, KNaO 0 0.6, MgO -0.5 0.6, ZnO 0 0.6,
+  heat 0.4 0.42, ratio^2 0 0.3, SiO2^2 0 0.3, Al2O3^2 0 0.3, SiO2*Al2O3 0 0.3, ratio*B2O3 0 0.3,
+  ratio*heat 0 0.3, B2O3*heat 0 0.3, heat^2 0 0.3, B2O3^2 0 0.3, ratio*KNaO 0 0.3, ratio*MgO 0 0.3`;
 const RESIDUAL = { melt: 0.8, gloss: 0.6 };
 
 const asStated = (table: string) =>
