@@ -1,5 +1,7 @@
 import type { Archive } from '../archive/archive.ts';
 import { coneText } from '../firing/cone.ts';
+import { foldsByCone } from './folds.ts';
+import { heatCheck, type HeatCheck } from './heat-check.ts';
 import type { Model, Validation } from './model.ts';
 import { fitStages, fittedStages, isJudged, type JudgedTile, type StagesFit } from './stages.ts';
 import { validation } from './validation.ts';
@@ -30,10 +32,11 @@ export function fitModel(archive: Archive, options: FitOptions = {}): Model {
   const tiles = archive.tiles.filter(isJudged);
   const fit = fitStages(tiles);
   const account = validation(tiles, fit);
+  const model = modelOf(archive, fit, options);
   return {
-    ...modelOf(archive, fit, options),
+    ...model,
     validation: account,
-    notes: fitNotes(tiles, account),
+    notes: [...heatNotes(heatCheck(model.melt, tiles)), ...fitNotes(tiles, account)],
   };
 }
 
@@ -66,6 +69,14 @@ function modelOf(
   };
 }
 
+function heatNotes({ glazes, falling, worst }: HeatCheck): string[] {
+  if (falling === 0) return [];
+  return [
+    `the chance to melt falls with more heat for ${falling} of ${glazes} fitted glazes, by up to ` +
+      `${worst.toFixed(2)}: heat hardly shows in these tiles; fire some of these glazes at another cone`,
+  ];
+}
+
 function fitNotes(tiles: readonly JudgedTile[], { byCone, notes }: Validation): string[] {
   if (tiles.length === 0) return [NOTHING_LEARNT];
   const count = (...wanted: JudgedTile['verdict'][]) =>
@@ -91,11 +102,26 @@ function fitNotes(tiles: readonly JudgedTile[], { byCone, notes }: Validation): 
       `no judged tile at cone ${coneText(cone)}: answers there are carried over from other cones`,
   );
   const oneCone = byCone.folds === 0;
+  const oneLoad = oneCone ? [] : conesOfOneLoad(tiles);
   return [
     ...few,
     ...unseen,
     ...(oneCone ? ['all tiles are of one cone: how the model holds by cone cannot be tested'] : []),
+    ...oneLoad,
     ...notes,
     'an error that all loads share (a kiln that always fires cool) cannot be seen in the tiles',
   ];
+}
+
+/** Where a cone was fired once, an error of that load and what the cone does look the same. */
+function conesOfOneLoad(tiles: readonly JudgedTile[]): string[] {
+  return foldsByCone(tiles).flatMap(({ leftOut, tiles: own }) => {
+    const loads = new Set(own.map(({ load }) => load));
+    const [first] = own;
+    if (loads.size > 1 || first?.firing === undefined) return [];
+    return [
+      `all judged tiles of cone ${coneText(Number(leftOut))} are of one load (${first.firing}): its own error ` +
+        'and what the cone does cannot be told apart; fire another load there',
+    ];
+  });
 }

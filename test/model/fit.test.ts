@@ -74,6 +74,19 @@ describe('notes of a fit', () => {
     expect(notesOf(tiles)).not.toMatch(/no judged tile|of one cone/);
   });
 
+  it('name a cone that was fired in one load only', () => {
+    const single = tiles.filter(({ load, heat }) => heat!.coneIndex !== 7 || load === 'L3');
+    const loadsOf7 = new Set(single.filter(({ heat }) => heat!.coneIndex === 7).map((t) => t.load));
+    expect(loadsOf7.size).toBe(1);
+    const [load] = loadsOf7;
+    expect(notesOf(single)).toContain(`all judged tiles of cone 7 are of one load (${load})`);
+    const unnamed = single.map(({ firing, ...tile }) => ({
+      ...tile,
+      load: `${tile.tile} ${firing}`,
+    }));
+    expect(notesOf(unnamed)).not.toContain('of one load');
+  });
+
   it('without any tile say that nothing is learnt, and nothing else', () => {
     const { notes, validation } = fitModel(anArchive());
     expect(notes).toEqual([

@@ -5,7 +5,8 @@ import type { Archive } from '../../src/archive/archive.ts';
 import { parseArchive } from '../../src/archive/read-archive.ts';
 import type { Unity } from '../../src/chemistry/unity.ts';
 import { coneIndex } from '../../src/firing/cone.ts';
-import { fitUnvalidated, type UnvalidatedModel } from '../../src/model/fit.ts';
+import { fitModel, fitUnvalidated, type UnvalidatedModel } from '../../src/model/fit.ts';
+import { heatCheck } from '../../src/model/heat-check.ts';
 import { stageLogOdds } from '../../src/model/log-odds.ts';
 import { isJudged } from '../../src/model/stages.ts';
 import { averagedProbability } from '../../src/numeric/logistic-normal.ts';
@@ -109,5 +110,28 @@ describe('with no tiles at all P(melted) does not fall from cone 06 to 14', () =
     for (let i = 0; i < 100; i++) {
       expect(greatestFall(model, drawnUnity(source), coneIndex('06'), 14)).toBeLessThan(ROUNDING);
     }
+  });
+});
+
+describe('a studio whose tiles hardly show heat', () => {
+  const weak: InventedTruth = {
+    melt: ({ SiO2 = 0, Al2O3 = 0 }, cone) =>
+      1 - 2 * (SiO2 - 3.2) - 10 * (Al2O3 - 0.42) + 0.4 * (cone - 6),
+    gloss: ({ SiO2 = 0 }) => 3 * (SiO2 - 3),
+  };
+  const tiles = inventedTiles({ tiles: 400, seed: 605, loadErrors: LOADS, truth: weak });
+  const model = fitModel(anArchive(tiles));
+
+  it('is told how many of its glazes fall with heat, and by how much', () => {
+    const { glazes, falling, worst } = heatCheck(model.melt, tiles.filter(isJudged));
+    expect(glazes).toBe(200);
+    expect(falling).toBeGreaterThan(0);
+    const note = `falls with more heat for ${falling} of 200 fitted glazes, by up to ${worst.toFixed(2)}`;
+    expect(model.notes.filter((one) => one.includes(note))).toHaveLength(1);
+  });
+
+  it('and one whose tiles show it is not', () => {
+    const { notes } = fitModel(anArchive(inventedTiles({ tiles: 90, seed: 8 })));
+    expect(notes.filter((note) => note.includes('falls with more heat'))).toEqual([]);
   });
 });
