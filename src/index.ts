@@ -42,12 +42,12 @@ export { fitModel, type FitOptions } from './model/fit.ts';
 export { modelText, parseModel } from './model/model-file.ts';
 
 export type * from './predict/answers.ts';
-export { predict } from './predict/predict.ts';
+export { predict, predictEach, type PredictionsOneByOne } from './predict/predict.ts';
 export { shift } from './predict/shift.ts';
 export { boundaries, type BoundariesOptions } from './predict/boundaries.ts';
 export { glazePoint, recipePoint } from './predict/point.ts';
 
-export { toJson } from './render/json.ts';
+export { jsonPieces, toJson } from './render/json.ts';
 export { PLAIN_LOOK, type Look } from './render/page.ts';
 export { printable, textWidth } from './render/printable.ts';
 export { wrapped, type Margins } from './render/wrapped.ts';

@@ -29,6 +29,7 @@ const WITHOUT_EXAMPLE: Readonly<Record<string, string>> = {
   modelText: 'needs a model; test/model',
   parseModel: 'needs a model; test/model',
   predict: 'needs a model; test/predict',
+  predictEach: 'needs a model; test/predict',
   shift: 'needs a model; test/predict',
   boundaries: 'needs a model; test/predict',
   recipePoint: 'needs the recipes of an archive; test/predict',
@@ -94,7 +95,7 @@ describe('every public function', () => {
     .filter(([, value]) => typeof value === 'function' && !/^class\b/.test(String(value)))
     .map(([name]) => name);
   const hasExample = (name: string) => {
-    const doc = new RegExp(`/\\*\\*((?:(?!\\*/)[\\s\\S])*)\\*/\\nexport function ${name}\\b`);
+    const doc = new RegExp(`/\\*\\*((?:(?!\\*/)[\\s\\S])*)\\*/\\nexport function\\*? ?${name}\\b`);
     return FILES.some(({ text }) => doc.exec(text)?.[1]?.includes('@example') === true);
   };
 

@@ -83,8 +83,12 @@ export function unityOfCells(
  * @returns moles above 0
  */
 export function molesOfCells(values: OxideValues): Moles {
-  const held = OXIDES.filter((oxide) => (values[oxide] ?? 0) > 0);
-  return Object.fromEntries(held.map((oxide) => [oxide, values[oxide] ?? 0]));
+  const held: Partial<Record<Oxide, number>> = {};
+  for (const oxide of OXIDES) {
+    const amount = values[oxide] ?? 0;
+    if (amount > 0) held[oxide] = amount;
+  }
+  return held;
 }
 
 /**

@@ -3,6 +3,7 @@ import {
   GLAZE_LIMITS,
   weightDoubt,
   wildAmounts,
+  type WeightDoubt,
 } from '../chemistry/plausible-glaze.ts';
 import { OXIDES, type Oxide } from '../chemistry/oxides.ts';
 import type { Moles, Unity } from '../chemistry/unity.ts';
@@ -52,20 +53,23 @@ export function missingColumnNotes(
 /**
  * Whether most of the amounts given as moles look like weight per cent, with one of them read both ways.
  *
- * @param given - amounts of each row, in any order
+ * @param given - amounts of each row, in any order; read once
  * @param words - what the rows are
  * @returns one note, or none
  */
-export function weightNotes(given: readonly GivenAmounts[], { noun }: RowWords): string[] {
-  const doubts = given.flatMap((one) => {
+export function weightNotes(given: Iterable<GivenAmounts>, { noun }: RowWords): string[] {
+  const doubts: (GivenAmounts & { readonly doubt: WeightDoubt })[] = [];
+  let rowCount = 0;
+  for (const one of given) {
+    rowCount++;
     const doubt = weightDoubt(one.amounts);
-    return doubt === undefined ? [] : [{ ...one, doubt }];
-  });
+    if (doubt !== undefined) doubts.push({ ...one, doubt });
+  }
   const example = inNameOrder(doubts, ({ name }) => name)[0];
-  if (example === undefined || 2 * doubts.length <= given.length) return [];
+  if (example === undefined || 2 * doubts.length <= rowCount) return [];
   const read = bothReadings(example.amounts)!;
   const sums = doubts.filter(({ doubt }) => doubt === 'sum').length;
-  const rows = given.length === 1 ? '' : `${doubts.length} of ${counted(given.length, noun)}: `;
+  const rows = rowCount === 1 ? '' : `${doubts.length} of ${counted(rowCount, noun)}: `;
   const why =
     2 * sums > doubts.length
       ? `oxides sum to about 100, as ${MAY_BE_WEIGHTS} and mole per cent do`
@@ -92,9 +96,10 @@ function formulaWords(unity: Unity): string {
 export function wildNotes(
   given: readonly { readonly name: string; readonly unity: Unity }[],
 ): string[] {
-  const wild = inNameOrder(given, ({ name }) => name)
+  const doubted = given
     .map(({ name, unity }) => ({ name, amounts: wildAmounts(unity) }))
     .filter(({ amounts }) => amounts.length > 0);
+  const wild = inNameOrder(doubted, ({ name }) => name);
   if (wild.length === 0) return [];
   const named = shortened(
     wild.map(({ name, amounts }) => `${quoted(name)} (${amounts.join(', ')})`),

@@ -26,14 +26,13 @@ const pointKind = {
   noted: (
     rows: readonly RowValues<ReturnType<typeof columns>>[],
     has: (column: string) => boolean,
-  ) => [
-    ...missingColumnNotes(has, rows.length, WORDS),
-    ...weightNotes(
-      rows.map((row) => ({ name: row.point ?? '', amounts: molesOfCells(row) })),
-      WORDS,
-    ),
-  ],
+  ) => [...missingColumnNotes(has, rows.length, WORDS), ...weightNotes(amountsGiven(rows), WORDS)],
 };
+
+/** One by one: a long file need not be held twice. */
+function* amountsGiven(rows: readonly RowValues<ReturnType<typeof columns>>[]) {
+  for (const row of rows) yield { name: row.point ?? '', amounts: molesOfCells(row) };
+}
 
 /** Compositions to ask about, and what is to be said about the file that gave them. */
 export interface PointsRead {
@@ -59,10 +58,13 @@ export function readPoints(file: string, bytes: Uint8Array): PointsRead {
   const sheet = readSheet(file, bytes, pointKind);
   const isWhole = sheet.headFaults.length === 0;
   const rows = sheet.rows.map(({ line, values, faults: cellFaults }) => {
-    const unread = new Set(cellFaults.map(({ column }) => column));
-    const read = unityOfCells(values, (column) => unread.has(column), sheet.has);
+    const isUnread = (column: string) => cellFaults.some((fault) => fault.column === column);
+    const read = unityOfCells(values, isUnread, sheet.has);
     const found = 'faults' in read && isWhole ? read.faults : [];
-    const faults = [...cellFaults, ...found.map((fault) => ({ file, line, ...fault }))];
+    const faults =
+      found.length === 0
+        ? cellFaults
+        : [...cellFaults, ...found.map((fault) => ({ file, line, ...fault }))];
     const value = 'unity' in read && faults.length === 0 ? read.unity : undefined;
     return { name: values.point, line, value, faults };
   });

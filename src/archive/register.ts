@@ -91,16 +91,31 @@ export function collectByName<Value extends object>(
   isWhole = true,
 ): Collected<Value> {
   const collected: Collected<Value> = { sound: new Map(), faulty: new Map(), faults: [] };
-  const given = rows.map((row) => ({ ...row, said: () => (isWhole ? saidBy(row) : undefined) }));
-  const repeated = repeatedNames(given, file, column);
+  const given = () =>
+    rows.map((row) => ({ ...row, said: () => (isWhole ? saidBy(row) : undefined) }));
+  const repeated = areDistinct(rows) ? NO_FAULTS : repeatedNames(given(), file, column);
   for (const { name, line, value, faults } of rows) {
     const ofName = repeated.get(line);
-    collected.faults.push(...faults, ...(ofName === undefined ? [] : [ofName]));
+    for (const fault of faults) collected.faults.push(fault);
+    if (ofName !== undefined) collected.faults.push(ofName);
     if (name === undefined) continue;
     if (value !== undefined && ofName === undefined) collected.sound.set(name, value);
     else if (!collected.faulty.has(name)) collected.faulty.set(name, line);
   }
   return collected;
+}
+
+const NO_FAULTS: ReadonlyMap<number, Fault> = new Map();
+
+function areDistinct(rows: readonly NamedRow<object>[]): boolean {
+  const seen = new Set<string>();
+  let named = 0;
+  for (const { name } of rows) {
+    if (name === undefined) continue;
+    seen.add(name);
+    named++;
+  }
+  return seen.size === named;
 }
 
 function saidBy<Value extends object>({ value }: NamedRow<Value>): string | undefined {

@@ -109,9 +109,8 @@ function readRows<Shape extends z.ZodRawShape>(table: Table, headings: Headings,
   }));
   const schema = z.object(Object.fromEntries(present.map(({ column, cell }) => [column, cell])));
   return table.rows.map((row): SheetRow<RowValues<Shape>> => {
-    const texts = Object.fromEntries(
-      present.map(({ column, place }) => [column, row.cells[place] ?? '']),
-    );
+    const texts: Record<string, string> = {};
+    for (const { column, place } of present) texts[column] = row.cells[place] ?? '';
     const whole = schema.safeParse(texts);
     // A faulty row is read cell by cell, so that its sound cells can be checked all the same.
     const values = whole.success
@@ -119,17 +118,30 @@ function readRows<Shape extends z.ZodRawShape>(table: Table, headings: Headings,
       : Object.fromEntries(
           present.map(({ column, cell }) => [column, cell.safeParse(texts[column]).data]),
         );
-    const cellFaults = (whole.error?.issues ?? []).map(({ path, message }) => {
-      return { file: table.file, line: row.line, column: String(path[0] ?? ''), message };
-    });
     const other = otherCells(headings, row);
     return {
       line: row.line,
       values: values as RowValues<Shape>,
-      faults: [...row.faults, ...cellFaults, ...headlessCells(table, row)],
+      faults: rowFaults(table, row, whole.error?.issues ?? []),
       ...(other && { other }),
     };
   });
+}
+
+const NONE: readonly Fault[] = [];
+
+function rowFaults(
+  table: Table,
+  row: TableRow,
+  issues: readonly { readonly path: readonly PropertyKey[]; readonly message: string }[],
+): readonly Fault[] {
+  const headless = headlessCells(table, row);
+  // Nearly every row is sound: a list of its own would be one in a hundred thousand.
+  if (issues.length + row.faults.length + headless.length === 0) return NONE;
+  const ofCells = issues.map(({ path, message }) => {
+    return { file: table.file, line: row.line, column: String(path[0] ?? ''), message };
+  });
+  return [...row.faults, ...ofCells, ...headless];
 }
 
 function otherCells({ unknown }: Headings, { cells }: TableRow) {

@@ -1,4 +1,4 @@
-import { FLUXES, OXIDES, type Oxide } from './oxides.ts';
+import { FLUXES, MOLAR_MASS, OXIDES, type Oxide } from './oxides.ts';
 import { toUnity, unityFormula, type Moles, type Unity, type WeightPercent } from './unity.ts';
 
 /** From `least` to `most`, mol per mol flux. */
@@ -52,7 +52,7 @@ export const GLAZE_LIMITS: string = POSSIBLE.map(({ oxide, least, most }) =>
  * wildAmounts({ SiO2: 3.4, Al2O3: 0.4, CaO: 1 }); // []
  */
 export function wildAmounts(unity: Unity): string[] {
-  return POSSIBLE.filter((range) => !isWithin(unity, range)).map(({ oxide }) => {
+  return POSSIBLE.filter((range) => !isWithin(unity[range.oxide] ?? 0, range)).map(({ oxide }) => {
     const amount = unity[oxide] ?? 0;
     return amount > 0 ? `${oxide} ${Number(amount.toPrecision(3))}` : `no ${oxide}`;
   });
@@ -74,13 +74,19 @@ export type WeightDoubt = 'sum' | 'formula';
  * weightDoubt({ SiO2: 3.4, Al2O3: 0.42, K2O: 0.3, CaO: 0.7 }); // undefined
  */
 export function weightDoubt(amounts: Moles): WeightDoubt | undefined {
-  const read = bothReadings(amounts);
-  if (read === undefined || !USUAL.every((range) => isWithin(read.asWeight, range))) {
-    return undefined;
-  }
+  const asMoles = perFlux((oxide) => amounts[oxide] ?? 0);
+  const asWeight = perFlux((oxide) => (amounts[oxide] ?? 0) / MOLAR_MASS[oxide]);
+  // Without a flux nothing is within: amounts are not numbers then, or infinite.
+  if (!USUAL.every((range) => isWithin(asWeight(range.oxide), range))) return undefined;
   const sum = OXIDES.reduce((total, oxide) => total + (amounts[oxide] ?? 0), 0);
   if (sum >= PER_CENT.least && sum <= PER_CENT.most) return 'sum';
-  return DOUBTED.every((range) => isWithin(read.asMoles, range)) ? undefined : 'formula';
+  return DOUBTED.every((range) => isWithin(asMoles(range.oxide), range)) ? undefined : 'formula';
+}
+
+/** An oxide's moles per mole of flux, worked out for those alone that are asked about. */
+function perFlux(molesOf: (oxide: Oxide) => number): (oxide: Oxide) => number {
+  const flux = FLUXES.reduce((sum, oxide) => sum + molesOf(oxide), 0);
+  return (oxide) => molesOf(oxide) / flux;
 }
 
 /**
@@ -98,7 +104,6 @@ export function bothReadings(amounts: Moles): { asMoles: Unity; asWeight: Unity 
   return { asMoles: toUnity(amounts), asWeight: unityFormula(weights) };
 }
 
-function isWithin(unity: Unity, { oxide, least, most }: Range): boolean {
-  const amount = unity[oxide] ?? 0;
+function isWithin(amount: number, { least, most }: Omit<Range, 'oxide'>): boolean {
   return amount >= least && amount <= most;
 }

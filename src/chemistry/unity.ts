@@ -78,6 +78,10 @@ function mapAmounts<To extends string>(
   amounts: Readonly<Partial<Record<Oxide, number>>>,
   change: (amount: number, oxide: Oxide) => number,
 ): Amounts<To> {
-  const held = OXIDES.filter((oxide) => amounts[oxide] !== undefined);
-  return Object.fromEntries(held.map((oxide) => [oxide, change(amounts[oxide] ?? 0, oxide)]));
+  const changed: Partial<Record<Oxide, number>> = {};
+  for (const oxide of OXIDES) {
+    const amount = amounts[oxide];
+    if (amount !== undefined) changed[oxide] = change(amount, oxide);
+  }
+  return changed;
 }

@@ -84,7 +84,21 @@ const HEAT_LEVELS_OFF = 3;
  * // [1, 4, 2]
  */
 export function columnValues(inputs: Inputs, columns: readonly string[]): number[] {
-  return columns.map((column) => columnValue(inputs, column));
+  const row: number[] = [];
+  fillColumnValues(inputs, columns, row);
+  return row;
+}
+
+/**
+ * The same in an array that is used again and again.
+ *
+ * @param inputs - scaled inputs
+ * @param columns - as for `columnValues`
+ * @param row - takes the values at its front
+ * @throws {RangeError} if a column names no input
+ */
+export function fillColumnValues(inputs: Inputs, columns: readonly string[], row: number[]): void {
+  for (let i = 0; i < columns.length; i++) row[i] = columnValue(inputs, columns[i]!);
 }
 
 /**

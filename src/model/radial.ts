@@ -1,4 +1,4 @@
-import { lowerIndex } from '../numeric/linalg.ts';
+import { solveLowerInPlace } from '../numeric/linalg.ts';
 import type { Inputs } from './inputs.ts';
 
 /**
@@ -10,6 +10,12 @@ export interface Radial {
   readonly centres: readonly (readonly number[])[];
   /** Cholesky factor of the kernel between the centres: lower triangle, row by row. */
   readonly factorLower: readonly number[];
+}
+
+/** The same in any kind of array: typed ones are read faster. */
+export interface RadialNumbers {
+  readonly centres: readonly ArrayLike<number>[];
+  readonly factorLower: ArrayLike<number>;
 }
 
 /** No radial columns: the departure is left over everywhere. */
@@ -29,8 +35,9 @@ const LENGTH: Readonly<Partial<Record<keyof Inputs, number>>> = {
   heat: 2,
 };
 
+const LENGTHS = Object.entries(LENGTH) as [keyof Inputs, number][];
 /** Numbers that a place has. */
-export const RADIAL_INPUTS = Object.keys(LENGTH).length;
+export const RADIAL_INPUTS = LENGTHS.length;
 /** A centre that would explain less of its own place than this is not worth a column. */
 const LEAST_EXPLAINED = 0.05;
 /** Ties between tiles of equal worth are not settled by rounding. */
@@ -43,7 +50,7 @@ const TIE = 1e-9;
  * @returns inputs in lengths of the kernel
  */
 export function radialPlace(inputs: Inputs): number[] {
-  return Object.entries(LENGTH).map(([input, length]) => inputs[input as keyof Inputs] / length);
+  return LENGTHS.map(([input, length]) => inputs[input] / length);
 }
 
 /**
@@ -53,7 +60,7 @@ export function radialPlace(inputs: Inputs): number[] {
  * @param b - place
  * @returns from 0 to 1
  */
-export function kernel(a: readonly number[], b: readonly number[]): number {
+export function kernel(a: ArrayLike<number>, b: ArrayLike<number>): number {
   let square = 0;
   for (let i = 0; i < a.length; i++) square += (a[i]! - b[i]!) ** 2;
   return Math.exp(-0.5 * square);
@@ -106,18 +113,30 @@ export function chosenCentres(places: readonly (readonly number[])[], most: numb
  * @returns one value a centre, and the share of the departure's variance that is left over
  */
 export function radialValues(
-  { centres, factorLower }: Radial,
-  place: readonly number[],
+  radial: RadialNumbers,
+  place: ArrayLike<number>,
 ): { readonly values: number[]; readonly leftOver: number } {
   const values: number[] = [];
+  const leftOver = fillRadialValues(radial, place, values);
+  return { values, leftOver };
+}
+
+/**
+ * The same in an array that is used again and again.
+ *
+ * @param radial - centres
+ * @param place - from `radialPlace`
+ * @param values - takes one value a centre
+ * @returns the share of the departure's variance that is left over
+ */
+export function fillRadialValues(
+  { centres, factorLower }: RadialNumbers,
+  place: ArrayLike<number>,
+  values: number[],
+): number {
+  for (let i = 0; i < centres.length; i++) values[i] = kernel(place, centres[i]!);
+  solveLowerInPlace(factorLower, values);
   let leftOver = 1;
-  centres.forEach((centre, i) => {
-    const row = lowerIndex(i, 0);
-    let value = kernel(place, centre);
-    for (let j = 0; j < i; j++) value -= factorLower[row + j]! * values[j]!;
-    value /= factorLower[row + i]!;
-    values.push(value);
-    leftOver -= value * value;
-  });
-  return { values, leftOver: Math.max(0, leftOver) };
+  for (const value of values) leftOver -= value * value;
+  return Math.max(0, leftOver);
 }

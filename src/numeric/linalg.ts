@@ -56,15 +56,69 @@ export function choleskyFactor(matrix: LowerTriangle, size: number): LowerTriang
  * Array.from(solveLower(Float64Array.of(2, 1, 2), [2, 5])); // [1, 2]
  */
 export function solveLower(factor: LowerTriangle, rightSide: ArrayLike<number>): Float64Array {
-  const size = rightSide.length;
-  const solution = new Float64Array(size);
-  for (let i = 0; i < size; i++) {
-    const row = lowerIndex(i, 0);
-    let sum = rightSide[i]!;
-    for (let k = 0; k < i; k++) sum -= factor[row + k]! * solution[k]!;
-    solution[i] = sum / factor[row + i]!;
-  }
+  const solution = new Float64Array(rightSide);
+  solveLowerInPlace(factor, solution);
   return solution;
+}
+
+/**
+ * Solves L y = b where b stands, in any kind of array.
+ *
+ * @param factor - lower triangle of L
+ * @param values - b, which y takes the place of
+ * @example
+ * const values = [2, 5];
+ * solveLowerInPlace([2, 1, 2], values); // undefined
+ * values; // [1, 2]
+ */
+export function solveLowerInPlace(
+  factor: ArrayLike<number>,
+  values: number[] | Float64Array,
+): void {
+  const size = values.length;
+  const whole = size - (size % ROWS_AT_ONCE);
+  for (let i = 0; i < whole; i += ROWS_AT_ONCE) {
+    const a = lowerIndex(i, 0);
+    const b = lowerIndex(i + 1, 0);
+    const c = lowerIndex(i + 2, 0);
+    const d = lowerIndex(i + 3, 0);
+    let ofA = values[i]!;
+    let ofB = values[i + 1]!;
+    let ofC = values[i + 2]!;
+    let ofD = values[i + 3]!;
+    for (let k = 0; k < i; k++) {
+      const known = values[k]!;
+      ofA -= factor[a + k]! * known;
+      ofB -= factor[b + k]! * known;
+      ofC -= factor[c + k]! * known;
+      ofD -= factor[d + k]! * known;
+    }
+    values[i] = ofA;
+    values[i + 1] = ofB;
+    values[i + 2] = ofC;
+    values[i + 3] = ofD;
+    solveRows(factor, values, i, i, i + ROWS_AT_ONCE);
+  }
+  solveRows(factor, values, 0, whole, size);
+}
+
+/** Rows that are summed side by side: the processor adds to four sums in the time of one. */
+const ROWS_AT_ONCE = 4;
+
+/** Solves rows one after the other; what lies left of `known` has been taken off already. */
+function solveRows(
+  factor: ArrayLike<number>,
+  values: number[] | Float64Array,
+  known: number,
+  from: number,
+  to: number,
+): void {
+  for (let i = from; i < to; i++) {
+    const row = lowerIndex(i, 0);
+    let sum = values[i]!;
+    for (let k = known; k < i; k++) sum -= factor[row + k]! * values[k]!;
+    values[i] = sum / factor[row + i]!;
+  }
 }
 
 /**
@@ -166,14 +220,46 @@ function lowerInverse(factor: LowerTriangle, size: number): LowerTriangle {
  * quadraticForm(Float64Array.of(4, 1, 9), [1, 2]); // 44
  */
 export function quadraticForm(lower: ArrayLike<number>, x: ArrayLike<number>): number {
+  const whole = x.length - (x.length % ROWS_AT_ONCE);
   let sum = 0;
-  for (let i = 0; i < x.length; i++) {
-    const row = lowerIndex(i, 0);
-    let inner = 0;
-    for (let j = 0; j < i; j++) inner += lower[row + j]! * x[j]!;
-    sum += x[i]! * (2 * inner + lower[row + i]! * x[i]!);
+  for (let i = 0; i < whole; i += ROWS_AT_ONCE) {
+    const a = lowerIndex(i, 0);
+    const b = lowerIndex(i + 1, 0);
+    const c = lowerIndex(i + 2, 0);
+    const d = lowerIndex(i + 3, 0);
+    let ofA = 0;
+    let ofB = 0;
+    let ofC = 0;
+    let ofD = 0;
+    for (let j = 0; j < i; j++) {
+      const value = x[j]!;
+      ofA += lower[a + j]! * value;
+      ofB += lower[b + j]! * value;
+      ofC += lower[c + j]! * value;
+      ofD += lower[d + j]! * value;
+    }
+    sum = withRow(lower, x, i, i, ofA, sum);
+    sum = withRow(lower, x, i + 1, i, ofB, sum);
+    sum = withRow(lower, x, i + 2, i, ofC, sum);
+    sum = withRow(lower, x, i + 3, i, ofD, sum);
   }
+  for (let i = whole; i < x.length; i++) sum = withRow(lower, x, i, 0, 0, sum);
   return sum;
+}
+
+/** The sum with one row of the form more, of which the first `known` columns are in `inner` already. */
+function withRow(
+  lower: ArrayLike<number>,
+  x: ArrayLike<number>,
+  i: number,
+  known: number,
+  inner: number,
+  sum: number,
+): number {
+  const row = lowerIndex(i, 0);
+  let below = inner;
+  for (let j = known; j < i; j++) below += lower[row + j]! * x[j]!;
+  return sum + x[i]! * (2 * below + lower[row + i]! * x[i]!);
 }
 
 /**

@@ -1,6 +1,7 @@
 import { log1pExp, sigmoid } from './logistic.ts';
-import { normalCdf, normalCdfFrom, normalDensity, normalQuantile } from './normal.ts';
-import { normalMean } from './quadrature.ts';
+import { normalCdf, normalDensity, normalQuantile } from './normal.ts';
+import { productTail } from './product-tail.ts';
+import { normalMean, normalNodes } from './quadrature.ts';
 import { findRoot } from './roots.ts';
 
 /** Log-odds that are known up to a Gaussian error. */
@@ -29,7 +30,52 @@ export interface GaussianLogOdds {
 export function averagedProbability(mean: number, sd: number): number {
   if (!(sd >= 0)) throw new RangeError(`sd must be >= 0, got ${sd}`);
   if (sd === 0) return sigmoid(mean);
-  return normalMean((z) => sigmoid(mean + sd * z), Math.min(0.5, 0.7 / sd));
+  return normalMean((z) => sigmoid(mean + sd * z), stepFor(sd));
+}
+
+const stepFor = (sd: number) => Math.min(0.5, 0.7 / sd);
+
+/**
+ * The averaged probabilities of a class and of its opposite, from one pass.
+ *
+ * The opposite is not 1 less the other, so that also a small one has all its digits.
+ *
+ * @param mean - posterior mean of the log-odds, dimensionless
+ * @param sd - posterior sd of the log-odds, >= 0
+ * @returns `averagedProbability` of the mean and of its negative, to the last bit
+ * @throws {RangeError} if sd is negative or not a number
+ * @example
+ * averagedBoth(2, 2).yes; // ~0.7752
+ * averagedBoth(2, 2).no; // ~0.2248
+ */
+export function averagedBoth(
+  mean: number,
+  sd: number,
+): { readonly yes: number; readonly no: number } {
+  if (!(sd >= 0)) throw new RangeError(`sd must be >= 0, got ${sd}`);
+  if (sd === 0) return { yes: sigmoid(mean), no: sigmoid(-mean) };
+  const step = stepFor(sd);
+  const density = normalNodes(step);
+  let yes = density[0]! * sigmoid(mean);
+  let no = density[0]! * sigmoid(-mean);
+  for (let i = 1; i < density.length; i++) {
+    const off = sd * (i * step);
+    const [above, below] = [mean + off, mean - off];
+    // As `sigmoid`, but one exponential serves both classes.
+    const ofAbove = Math.exp(-Math.abs(above));
+    const ofBelow = Math.exp(-Math.abs(below));
+    const likelyAbove = 1 / (1 + ofAbove);
+    const likelyBelow = 1 / (1 + ofBelow);
+    const rareAbove = ofAbove / (1 + ofAbove);
+    const rareBelow = ofBelow / (1 + ofBelow);
+    const yesAbove = above >= 0 ? likelyAbove : rareAbove;
+    const yesBelow = below >= 0 ? likelyBelow : rareBelow;
+    yes += density[i]! * (yesAbove + yesBelow);
+    no +=
+      density[i]! *
+      ((above >= 0 ? rareAbove : likelyAbove) + (below >= 0 ? rareBelow : likelyBelow));
+  }
+  return { yes: yes * step, no: no * step };
 }
 
 /**
@@ -65,57 +111,98 @@ export function productQuantile(
 ): number {
   const [outer, inner] = first.sd < second.sd ? [first, second] : [second, first];
   if (outer.sd === 0) return sigmoid(outer.mean) * probabilityQuantile(inner, p);
+  const quick = quickQuantile(outer, inner, p);
+  if (quick !== undefined) return sigmoid(quick);
   // P(XY < xy) <= P(X < x) + P(Y < y): the quantile lies between these two products.
   const bound = (each: number) => {
     const z = normalQuantile(each);
     return productLogOdds(outer.mean + outer.sd * z, inner.mean + inner.sd * z);
   };
-  const bracket = [bound(p / 2), bound((1 + p) / 2)] as const;
-  const start = linearisedQuantile(outer, inner, normalQuantile(p));
-  const quick = newtonQuantile(outer, inner, p, bracket, start);
-  if (quick !== undefined) return sigmoid(quick);
   const excess = (logOddsOfProduct: number) => productCdf(logOddsOfProduct, outer, inner) - p;
-  return sigmoid(findRoot(excess, ...bracket, 1e-9));
+  return sigmoid(findRoot(excess, bound(p / 2), bound((1 + p) / 2), 1e-9));
 }
 
-/** The quantile if the product's log-odds were linear in those of both. */
-function linearisedQuantile(first: GaussianLogOdds, second: GaussianLogOdds, z: number): number {
-  const logOdds = productLogOdds(first.mean, second.mean);
-  const missed = sigmoid(-logOdds);
-  if (missed === 0) return logOdds;
-  const [ofFirst, ofSecond] = [sigmoid(-first.mean) / missed, sigmoid(-second.mean) / missed];
-  return logOdds + z * Math.hypot(ofFirst * first.sd, ofSecond * second.sd);
-}
+/** Between these the odds and what is left of 1 are far from underflow. */
+const QUICK_LOG_ODDS = [-200, 30] as const;
+/** Steps are cubic: what is left after one this many sds long is below 1e-9 of the log-odds. */
+const SMALL_STEP_SDS = 3e-3;
+/** From a good start two steps do; where five do not, another method must. */
+const MOST_STEPS = 5;
+/** A share closer to 0 or 1 says too little of how far off the place is. */
+const LEAST_SHARE = 1e-9;
 
-/** Newton's steps are quadratic: after one so small the next is lost in rounding. */
-const SMALL_STEP = 1e-7;
-const MOST_STEPS = 30;
-
-/** Newton's method within a bracket; undefined where it does not settle or the odds would underflow. */
-function newtonQuantile(
+/**
+ * Log-odds of the quantile by steps on the standard score of the share, which is nearly linear in the log-odds;
+ * undefined where that does not settle.
+ *
+ * Source: Chebyshev's method, J. F. Traub, Iterative Methods for the Solution of Equations, 1964.
+ */
+function quickQuantile(
   outer: GaussianLogOdds,
   inner: GaussianLogOdds,
   p: number,
-  [lowest, highest]: readonly [number, number],
-  start: number,
 ): number | undefined {
-  if (lowest < QUICK_LOG_ODDS[0] || highest > QUICK_LOG_ODDS[1]) return undefined;
-  let [low, high] = [lowest, highest];
-  let at = Math.min(Math.max(start, low), high);
-  for (let step = 0; step < MOST_STEPS; step++) {
-    const { share, density } = quickCdf(at, outer, inner);
-    const excess = share - p;
-    if (excess > 0) high = at;
-    else low = at;
-    const next = at - excess / density;
-    const isInside = next > low && next < high;
-    const moved = isInside ? next : (low + high) / 2;
-    if (Math.abs(moved - at) < SMALL_STEP && isInside) return moved;
-    if (high - low < 1e-9) return moved;
-    at = moved;
+  const z = normalQuantile(p);
+  let at = likelyQuantile(outer, inner, z);
+  for (let i = 0; i < MOST_STEPS; i++) {
+    if (!(at > QUICK_LOG_ODDS[0] && at < QUICK_LOG_ODDS[1])) return undefined;
+    const tail = productTail(at, outer, inner);
+    const share = tail === undefined ? 0 : 1 - tail.above;
+    if (tail === undefined || !(share > LEAST_SHARE && share < 1 - LEAST_SHARE)) return undefined;
+    const score = normalQuantile(share);
+    const perScore = normalDensity(score) / tail.density;
+    const linear = (z - score) * perScore;
+    const bend = 0.5 * (tail.slope / tail.density + score / perScore) * linear;
+    const step = Math.abs(bend) < 0.5 ? linear * (1 - bend) : linear;
+    at += step;
+    if (Math.abs(step) < SMALL_STEP_SDS * Math.min(1, perScore)) return at;
   }
   return undefined;
 }
+
+/**
+ * The quantile if the product's log-odds were a parabola: at the likeliest of the places that lie z sds off in a
+ * straight line, moved by half the bend across that line.
+ *
+ * Source: first and second order reliability, K. Breitung, Journal of Engineering Mechanics 110 (1984) 357-366.
+ */
+function likelyQuantile(first: GaussianLogOdds, second: GaussianLogOdds, z: number): number {
+  let slopes = productSlopes(first, second, 0, 0);
+  for (let i = 0; i < 2; i++) {
+    slopes = productSlopes(first, second, z * slopes.alongFirst, z * slopes.alongSecond);
+  }
+  return slopes.logOdds + 0.5 * slopes.bendAcross;
+}
+
+/** Log-odds of the product at a place in standard scores, its direction of rise and its bend across that. */
+function productSlopes(
+  first: GaussianLogOdds,
+  second: GaussianLogOdds,
+  firstScore: number,
+  secondScore: number,
+) {
+  const firstLogOdds = first.mean + first.sd * firstScore;
+  const secondLogOdds = second.mean + second.sd * secondScore;
+  const [missedX, missedY] = [sigmoid(-firstLogOdds), sigmoid(-secondLogOdds)];
+  const missed = missedX + missedY - missedX * missedY;
+  const rise = [(first.sd * missedX) / missed, (second.sd * missedY) / missed] as const;
+  const steepness = Math.hypot(...rise);
+  const [alongFirst, alongSecond] = [rise[0] / steepness, rise[1] / steepness];
+  // Second derivatives of the log-odds: d rise / d score, from those of 1 - X, 1 - Y and 1 - X Y.
+  const ofFirst = (rise[0] * (first.sd * (1 - missed - (1 - missedX)))) / missed;
+  const ofSecond = (rise[1] * (second.sd * (1 - missed - (1 - missedY)))) / missed;
+  const ofBoth = rise[0] * rise[1] * (1 - missed);
+  return {
+    logOdds: productLogOdds(firstLogOdds, secondLogOdds),
+    alongFirst,
+    alongSecond,
+    bendAcross:
+      ofFirst * alongSecond ** 2 +
+      ofSecond * alongFirst ** 2 -
+      2 * ofBoth * alongFirst * alongSecond,
+  };
+}
+
 /** From here on a probability is 1 in double precision. */
 const SURE_LOG_ODDS = 745;
 
@@ -166,52 +253,4 @@ function productCdf(logOddsOfQ: number, outer: GaussianLogOdds, inner: GaussianL
     sum += normalDensity(x) * Math.exp(logShare) * normalCdf(y);
   }
   return below + (sum * step) / outer.sd;
-}
-
-/** Between these the odds and what is left of 1 are far from underflow. */
-const QUICK_LOG_ODDS = [-200, 30] as const;
-/** An error of exp(-2 pi^2 / 0.7) = 6e-13; beyond 7 sds 3e-12 is left. */
-const QUICK_STEP = 0.7;
-const QUICK_SDS = 7;
-
-/**
- * The product's distribution as in `productCdf`, and its density per unit of log-odds, from odds instead of
- * their logarithms: two exponentials and two logarithms a node. With y the log-odds of q / X, dy / d(log-odds
- * of q) is 1 + q e^-v, which cancels the share of v in dx: the density is the plain product of both.
- */
-function quickCdf(
-  logOddsOfQ: number,
-  outer: GaussianLogOdds,
-  inner: GaussianLogOdds,
-): { readonly share: number; readonly density: number } {
-  const q = sigmoid(logOddsOfQ);
-  const log1MinusQ = -log1pExp(logOddsOfQ);
-  const logQ = -log1pExp(-logOddsOfQ);
-  const below = normalCdf((logOddsOfQ - outer.mean) / outer.sd);
-  const vAt = (logOdds: number) => {
-    const sum = logOdds + log1MinusQ;
-    return sum > logQ ? sum + Math.log1p(-Math.exp(logQ - sum)) : -Infinity;
-  };
-  const low = Math.max(LOWEST_V + Math.min(0, logQ), vAt(outer.mean - QUICK_SDS * outer.sd));
-  const high = vAt(outer.mean + QUICK_SDS * outer.sd);
-  if (!(high > low)) return { share: below, density: 0 };
-  const widest = Math.min(0.8 * outer.sd, Math.max(QUICK_STEP, outer.sd / 100));
-  const cells = Math.ceil((high - low) / widest);
-  const step = (high - low) / cells;
-  let share = 0;
-  let density = 0;
-  for (let i = 0; i <= cells; i++) {
-    const odds = Math.exp(low + i * step);
-    const x = (Math.log(odds + q) - log1MinusQ - outer.mean) / outer.sd;
-    const y = (logOddsOfQ + Math.log1p(1 / odds) - inner.mean) / inner.sd;
-    const ofX = Math.exp(-0.5 * x * x);
-    const ofY = Math.exp(-0.5 * y * y);
-    share += ofX * (odds / (odds + q)) * normalCdfFrom(y, ofY);
-    density += ofX * ofY;
-  }
-  const scale = step / (outer.sd * Math.sqrt(2 * Math.PI));
-  return {
-    share: below + share * scale,
-    density: (density * scale) / (inner.sd * Math.sqrt(2 * Math.PI)),
-  };
 }

@@ -20,12 +20,35 @@ const FARTHEST_Z = 8.5;
  * SIAM Review 56 (2014) 385-458, theorem 5.1.
  */
 export function normalMean(f: (z: number) => number, step: number): number {
-  if (!(step > 0)) throw new RangeError(`step must be > 0, got ${step}`);
-  const count = Math.ceil(FARTHEST_Z / step);
-  let sum = normalDensity(0) * f(0);
-  for (let i = 1; i <= count; i++) {
+  const density = normalNodes(step);
+  let sum = density[0]! * f(0);
+  for (let i = 1; i < density.length; i++) {
     const z = i * step;
-    sum += normalDensity(z) * (f(z) + f(-z));
+    sum += density[i]! * (f(z) + f(-z));
   }
   return sum * step;
 }
+
+/**
+ * The normal density at the nodes of `normalMean`: at 0, at one step on both sides, at two, and so on.
+ *
+ * @param step - distance of the nodes in z
+ * @returns densities; not to be changed
+ * @throws {RangeError} if the step is not above 0
+ * @example
+ * normalNodes(0.5).length; // 18
+ */
+export function normalNodes(step: number): Readonly<Float64Array> {
+  if (!(step > 0)) throw new RangeError(`step must be > 0, got ${step}`);
+  return step === WIDEST_STEP ? AT_WIDEST_STEP : nodesAt(step);
+}
+
+function nodesAt(step: number): Float64Array {
+  const density = new Float64Array(Math.ceil(FARTHEST_Z / step) + 1);
+  for (let i = 0; i < density.length; i++) density[i] = normalDensity(i * step);
+  return density;
+}
+
+/** The step of nearly all answers: its nodes are made once. */
+const WIDEST_STEP = 0.5;
+const AT_WIDEST_STEP = nodesAt(WIDEST_STEP);

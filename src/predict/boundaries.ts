@@ -8,6 +8,7 @@ import type { Boundaries, Boundary, Point } from './answers.ts';
 import {
   EDGE_STEPS,
   experienceOf,
+  placeInSteps,
   squaredSteps,
   surroundings,
   type Experience,
@@ -247,7 +248,8 @@ function placeSupport(
   value: number | null,
 ) {
   if (value === null) return { tilesNear: 0, support: null, nearest: [] };
-  const squares = squaredSteps(experience, line.unityAt(value));
+  const unity = line.unityAt(value);
+  const squares = squaredSteps(experience, unity);
   const isNear = (heat: number, i: number) =>
     squares[i]! <= EDGE_STEPS ** 2 && Math.abs(heat - coneIndex) <= NEAR_CONES;
   // An underfired tile says nothing of gloss.
@@ -255,6 +257,6 @@ function placeSupport(
   const tilesNear = experience.tiles.filter(
     ({ heat, verdict }, i) => speaks(verdict) && isNear(heat!.coneIndex, i),
   ).length;
-  const { support, nearest } = surroundings(experience, squares, coneIndex);
+  const { support, nearest } = surroundings(experience, placeInSteps(experience, unity), coneIndex);
   return { tilesNear, support, nearest };
 }

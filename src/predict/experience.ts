@@ -2,6 +2,8 @@ import { OXIDES, type Oxide } from '../chemistry/oxides.ts';
 import type { Unity } from '../chemistry/unity.ts';
 import type { Tile } from '../archive/archive.ts';
 import type { NearTile, Support } from './answers.ts';
+import { tileTree, type TileTree } from './tile-tree.ts';
+import { heatsInRadius, nearestTiles, tilesInRadius, type TreePlace } from './tree-search.ts';
 
 /**
  * One step of each oxide, mol per mol flux: a change that a potter would fire a new tile for. Every
@@ -54,6 +56,8 @@ export interface Experience {
   readonly steps: Float64Array;
   /** Cone of each tile, as a number. */
   readonly cones: Float64Array;
+  /** The same tiles, ready to be searched. */
+  readonly tree: TileTree;
 }
 
 /**
@@ -69,13 +73,47 @@ export function experienceOf(tiles: readonly Tile[]): Experience {
     .sort((a, b) => (a.tile < b.tile ? -1 : 1));
   const rows = known.map(({ unity }) => stepsOf(unity));
   const held = OXIDES.flatMap((_, j) => (rows.some((row) => row[j] !== 0) ? [j] : []));
-  return {
-    tiles: known,
-    held,
-    steps: Float64Array.from(rows.flatMap((row) => held.map((j) => row[j]!))),
-    cones: Float64Array.from(known, ({ heat }) => heat!.coneIndex),
-  };
+  const steps = Float64Array.from(rows.flatMap((row) => held.map((j) => row[j]!)));
+  const cones = Float64Array.from(known, ({ heat }) => heat!.coneIndex);
+  const inSteps = known.flatMap(({ heat }, i) => [
+    ...held.map((j) => rows[i]![j]!),
+    heat!.coneIndex / CONES_PER_STEP,
+  ]);
+  const tree = tileTree(Float64Array.from(inSteps), held.length + 1);
+  return { tiles: known, held, steps, cones, tree };
 }
+
+/** A composition as an experience sees it. */
+export interface PlaceInSteps {
+  /** Of the oxides that tiles hold, in steps. */
+  readonly steps: readonly number[];
+  /** Sum of squares of the other oxides: equally far from all tiles. */
+  readonly apart: number;
+}
+
+/**
+ * A composition in the steps of an experience.
+ *
+ * @param experience - tiles
+ * @param unity - unity formula
+ * @returns its steps
+ */
+export function placeInSteps({ held }: Experience, unity: Unity): PlaceInSteps {
+  const steps: number[] = [];
+  let apart = 0;
+  for (let j = 0; j < OXIDES.length; j++) {
+    const oxide = OXIDES[j]!;
+    const step = (unity[oxide] ?? 0) / STEP[oxide];
+    if (held[steps.length] === j) steps.push(step);
+    else apart += step * step;
+  }
+  return { steps, apart };
+}
+
+const placeAt = ({ steps, apart }: PlaceInSteps, coneIndex: number): TreePlace => ({
+  steps: [...steps, coneIndex / CONES_PER_STEP],
+  apart,
+});
 
 /**
  * Distance of every tile from a composition, heat left aside.
@@ -84,16 +122,14 @@ export function experienceOf(tiles: readonly Tile[]): Experience {
  * @param unity - unity formula
  * @returns sum of squares of steps, per tile
  */
-export function squaredSteps({ tiles, held, steps }: Experience, unity: Unity): Float64Array {
-  const all = stepsOf(unity);
-  const point = Float64Array.from(held, (j) => all[j]!);
-  // What no tile holds is equally far from all of them.
-  const apart = all.reduce((sum, step, j) => (held.includes(j) ? sum : sum + step * step), 0);
-  const squares = new Float64Array(tiles.length).fill(apart);
-  const width = held.length;
+export function squaredSteps(experience: Experience, unity: Unity): Float64Array {
+  const { tiles, steps } = experience;
+  const place = placeInSteps(experience, unity);
+  const squares = new Float64Array(tiles.length).fill(place.apart);
+  const width = place.steps.length;
   for (let i = 0, at = 0; i < squares.length; i++) {
     for (let j = 0; j < width; j++, at++) {
-      const off = steps[at]! - point[j]!;
+      const off = steps[at]! - place.steps[j]!;
       squares[i]! += off * off;
     }
   }
@@ -103,8 +139,10 @@ export function squaredSteps({ tiles, held, steps }: Experience, unity: Unity): 
 /** How far inside the experience a point is. */
 export interface Surroundings {
   readonly support: Support;
-  /** Tiles within the radius of the edge. */
-  readonly tilesWithinEdge: number;
+  /** Counts the tiles within the radius of the edge; most answers do not ask. */
+  readonly tilesWithinEdge: () => number;
+  /** One of the nearest was fired at this very heat, within the radius of the edge. */
+  readonly hasSuchHere: boolean;
   readonly nearest: readonly NearTile[];
 }
 
@@ -116,30 +154,61 @@ export interface Surroundings {
  * oxides add as the sides of a right angle.
  *
  * @param experience - tiles
- * @param squares - from `squaredSteps` for the point
+ * @param place - from `placeInSteps`
  * @param coneIndex - heat work asked about
  * @returns support, count and the nearest tiles
  */
 export function surroundings(
-  { tiles, cones }: Experience,
-  squares: Float64Array,
+  { tiles, tree }: Experience,
+  place: PlaceInSteps,
   coneIndex: number,
 ): Surroundings {
-  const distance = distances(cones, squares, coneIndex);
-  const within = (radius: number) => {
-    let count = 0;
-    for (let i = 0; i < distance.length; i++) if (distance[i]! <= radius) count++;
-    return count;
+  const there = placeAt(place, coneIndex);
+  const here = there.steps.at(-1);
+  const found = nearestTiles(tree, there, NAMED_TILES);
+  const support = supportBy(found[TILES_NEEDED - 1]?.distance);
+  const nearest = found.map(({ tile, distance }) => nearTile(tiles[tile]!, distance));
+  return {
+    support,
+    nearest,
+    tilesWithinEdge: () => tilesInRadius(tree, there, EDGE_STEPS),
+    hasSuchHere: found.some(({ distance, heat }) => heat === here && distance < EDGE_STEPS),
   };
-  const tilesWithinEdge = within(EDGE_STEPS);
-  const support =
-    within(INSIDE_STEPS) >= TILES_NEEDED
-      ? 'inside'
-      : tilesWithinEdge >= TILES_NEEDED
-        ? 'edge'
-        : 'outside';
-  const nearest = smallest(distance, NAMED_TILES).map((i) => nearTile(tiles[i]!, distance[i]!));
-  return { support, tilesWithinEdge, nearest };
+}
+
+/** From the distance of the last of the tiles needed. */
+function supportBy(distance = Infinity): Support {
+  if (distance <= INSIDE_STEPS) return 'inside';
+  return distance <= EDGE_STEPS ? 'edge' : 'outside';
+}
+
+/** Cones at which tiles were judged. */
+export interface JudgedCones {
+  readonly coolest: number;
+  readonly hottest: number;
+  /** Whether these are the cones of such glazes; else of all tiles, since none is such. */
+  readonly ofSuch: boolean;
+}
+
+/**
+ * Cones at which glazes like this one were judged: within the radius of the edge, heat left aside.
+ *
+ * @param experience - tiles
+ * @param place - from `placeInSteps`
+ * @returns the range of cones; undefined where there is no tile at all
+ */
+export function judgedCones(
+  { tiles, tree }: Experience,
+  place: PlaceInSteps,
+): JudgedCones | undefined {
+  if (tiles.length === 0) return undefined;
+  const near = heatsInRadius(tree, placeAt(place, 0), EDGE_STEPS);
+  const [coolest, hottest] = near ?? [tree.low.at(-1)!, tree.high.at(-1)!];
+  return {
+    coolest: coolest * CONES_PER_STEP,
+    hottest: hottest * CONES_PER_STEP,
+    ofSuch: near !== undefined,
+  };
 }
 
 /**
@@ -176,21 +245,6 @@ function distances(cones: Float64Array, squares: Float64Array, coneIndex: number
 function nearTile({ tile, verdict, heat }: Tile, distance: number): NearTile {
   const rounded = Math.round(distance * 1000) / 1000;
   return { tile, surface: verdict, cone: heat!.cone, distance: rounded };
-}
-
-/** Places of the smallest values, smallest first; equal ones by name of the tile. */
-function smallest(values: Float64Array, count: number): number[] {
-  const found: number[] = [];
-  let most = Infinity;
-  for (let i = 0; i < values.length; i++) {
-    const value = values[i]!;
-    if (found.length === count && value >= most) continue;
-    const at = found.findIndex((other) => values[other]! > value);
-    found.splice(at < 0 ? found.length : at, 0, i);
-    if (found.length > count) found.pop();
-    most = values[found.at(-1)!]!;
-  }
-  return found;
 }
 
 function stepsOf(unity: Unity): number[] {

@@ -14,15 +14,18 @@ import type {
   Interval90,
   ModelStamp,
   Point,
+  Prediction,
   Predictions,
   SurfaceInterval90,
 } from './answers.ts';
 import {
   EDGE_STEPS,
   experienceOf,
-  squaredSteps,
+  judgedCones,
+  placeInSteps,
   surroundings,
   type Experience,
+  type JudgedCones,
   type Surroundings,
 } from './experience.ts';
 
@@ -42,17 +45,46 @@ export function predict(
   points: readonly Point[],
   coneIndexes: readonly number[],
 ): Predictions {
-  const experience = judgedExperience(model);
+  const { schema, model: stamp, predictions } = predictEach(model, points, coneIndexes);
+  return { schema, model: stamp, predictions: [...predictions] };
+}
+
+/** As Predictions, but each answer is made when it is read; to be read once. */
+export interface PredictionsOneByOne extends Omit<Predictions, 'predictions'> {
+  readonly predictions: Iterable<Prediction>;
+}
+
+/**
+ * The same answers, each made when it is read: a hundred thousand need not be held at a time.
+ *
+ * @param model - fitted model
+ * @param points - compositions, in a list of any kind
+ * @param coneIndexes - cones as numbers
+ * @returns answers in the order of the points, then of the cones
+ */
+export function predictEach(
+  model: UnvalidatedModel,
+  points: Iterable<Point>,
+  coneIndexes: readonly number[],
+): PredictionsOneByOne {
   return {
     schema: 'coneshift.predictions/1',
     model: modelStamp(model),
-    predictions: points.flatMap((point) =>
-      coneAnswers(model, experience, point, coneIndexes).map((answer) => ({
-        point: point.point,
-        ...answer,
-      })),
-    ),
+    predictions: eachPrediction(model, points, coneIndexes),
   };
+}
+
+function* eachPrediction(
+  model: UnvalidatedModel,
+  points: Iterable<Point>,
+  coneIndexes: readonly number[],
+): Generator<Prediction> {
+  const experience = judgedExperience(model);
+  for (const point of points) {
+    for (const answer of coneAnswers(model, experience, point, coneIndexes)) {
+      yield { point: point.point, ...answer };
+    }
+  }
 }
 
 /**
@@ -90,14 +122,14 @@ export function coneAnswers(
   { unity }: Point,
   coneIndexes: readonly number[],
 ): ConeAnswer[] {
-  const squares = squaredSteps(experience, unity);
+  const place = placeInSteps(experience, unity);
   const hazards = hazardNotes(unity);
   return coneIndexes.map((coneIndex) => {
     const melt = stageLogOdds(model.melt, unity, coneIndex);
     const gloss = stageLogOdds(model.gloss, unity, coneIndex);
     const probability = surfaceProbability(melt, gloss);
     const interval90 = surfaceIntervals(melt, gloss);
-    const around = surroundings(experience, squares, coneIndex);
+    const around = surroundings(experience, place, coneIndex);
     return {
       cone: coneText(coneIndex),
       coneIndex,
@@ -108,7 +140,7 @@ export function coneAnswers(
       nearest: around.nearest,
       notes: [
         ...supportNotes(around),
-        ...heatNotes(experience, squares, coneIndex),
+        ...(around.hasSuchHere ? [] : heatNotes(judgedCones(experience, place), coneIndex)),
         ...tailNotes(probability, interval90),
         ...hazards,
       ],
@@ -151,7 +183,8 @@ export function surfaceIntervals(melt: GaussianLogOdds, gloss: GaussianLogOdds):
 
 function supportNotes({ support, tilesWithinEdge }: Surroundings): string[] {
   if (support === 'inside') return [];
-  const tiles = tilesWithinEdge === 1 ? '1 judged tile' : `${tilesWithinEdge} judged tiles`;
+  const count = tilesWithinEdge();
+  const tiles = count === 1 ? '1 judged tile' : `${count} judged tiles`;
   const within = `${tiles} within ${EDGE_STEPS} steps`;
   return support === 'edge'
     ? [`at the edge of the archive (${within}, too few of them close): fire a tile first`]
@@ -175,30 +208,15 @@ function tailNotes(probability: SurfaceProbability, interval90: SurfaceInterval9
 }
 
 /** Heat beyond the tiles of glazes like this one: what is not modelled there. */
-function heatNotes({ cones }: Experience, squares: Float64Array, coneIndex: number): string[] {
-  if (cones.length === 0) return ['no judged tile at all: this is what is usual elsewhere'];
-  const near = rangeWhere(cones, (i) => squares[i]! <= EDGE_STEPS ** 2);
-  const [coolest, hottest] = near ?? rangeWhere(cones, () => true)!;
-  const like = near ? 'tile of such a glaze' : 'tile';
-  if (coneIndex > hottest) {
-    return [
-      `hotter than the hottest judged ${like} (cone ${coneText(hottest)}): running and blistering ` +
-        'are not modelled; fire on a catcher',
-    ];
-  }
-  if (coneIndex >= coolest) return [];
-  return [`cooler than the coolest judged ${like} (cone ${coneText(coolest)})`];
-}
-
-function rangeWhere(
-  values: Float64Array,
-  counts: (i: number) => boolean,
-): readonly [number, number] | undefined {
-  let [low, high] = [Infinity, -Infinity];
-  for (let i = 0; i < values.length; i++) {
-    if (!counts(i)) continue;
-    low = Math.min(low, values[i]!);
-    high = Math.max(high, values[i]!);
-  }
-  return low <= high ? [low, high] : undefined;
+function heatNotes(judged: JudgedCones | undefined, coneIndex: number): string[] {
+  if (judged === undefined) return ['no judged tile at all: this is what is usual elsewhere'];
+  const { coolest, hottest, ofSuch } = judged;
+  if (coneIndex >= coolest && coneIndex <= hottest) return [];
+  const like = ofSuch ? 'tile of such a glaze' : 'tile';
+  if (coneIndex < coolest)
+    return [`cooler than the coolest judged ${like} (cone ${coneText(coolest)})`];
+  return [
+    `hotter than the hottest judged ${like} (cone ${coneText(hottest)}): running and blistering ` +
+      'are not modelled; fire on a catcher',
+  ];
 }

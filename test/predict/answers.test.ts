@@ -8,7 +8,7 @@ import { sigmoid } from '../../src/numeric/logistic.ts';
 import { seededGenerator } from '../../src/numeric/random.ts';
 import type { Point, Turn } from '../../src/predict/answers.ts';
 import { boundaries } from '../../src/predict/boundaries.ts';
-import { experienceOf, squaredSteps, surroundings } from '../../src/predict/experience.ts';
+import { experienceOf, placeInSteps, surroundings } from '../../src/predict/experience.ts';
 import { predict, surfaceIntervals } from '../../src/predict/predict.ts';
 import { shift } from '../../src/predict/shift.ts';
 import { aHeat, anArchive, aTile } from '../support/builders.ts';
@@ -110,7 +110,7 @@ it.each(OXIDES)('support falls to outside with far more %s than any tile holds',
   const experience = experienceOf(alike);
   const asked: Unity = { ...GLOSSY, [oxide]: ((GLOSSY as Unity)[oxide] ?? 0) + 2 };
   const supportAt = (unity: Unity) =>
-    surroundings(experience, squaredSteps(experience, unity), 6).support;
+    surroundings(experience, placeInSteps(experience, unity), 6).support;
   expect(supportAt(GLOSSY)).toBe('inside');
   expect(supportAt(asked)).toBe('outside');
 });

@@ -7,7 +7,7 @@ import { sigmoid } from '../../src/numeric/logistic.ts';
 import { seededGenerator } from '../../src/numeric/random.ts';
 import { quantile } from '../../src/numeric/summary.ts';
 import type { Point } from '../../src/predict/answers.ts';
-import { experienceOf, squaredSteps, surroundings } from '../../src/predict/experience.ts';
+import { experienceOf, placeInSteps, surroundings } from '../../src/predict/experience.ts';
 import { glazePoint, recipePoint } from '../../src/predict/point.ts';
 import { predict } from '../../src/predict/predict.ts';
 import { aHeat, anArchive, aTile } from '../support/builders.ts';
@@ -101,7 +101,7 @@ describe('support', () => {
     aTile({ tile: name, unity: { ...unity, SiO2: silica }, heat: aHeat(cone) });
   const look = (tiles: Parameters<typeof experienceOf>[0], asked: typeof unity, cone = 6) => {
     const experience = experienceOf(tiles);
-    return surroundings(experience, squaredSteps(experience, asked), cone);
+    return surroundings(experience, placeInSteps(experience, asked), cone);
   };
 
   it('is inside with three tiles within 1.5 steps, at the edge within 3, else outside', () => {

@@ -10,7 +10,7 @@ import {
   probabilityCell,
   signed,
 } from '../../src/render/figures.ts';
-import { toJson } from '../../src/render/json.ts';
+import { jsonPieces, toJson } from '../../src/render/json.ts';
 import { pageOf, PLAIN_LOOK, point, prose } from '../../src/render/page.ts';
 import { cutTo, printable, textWidth } from '../../src/render/printable.ts';
 import { wrapped } from '../../src/render/wrapped.ts';
@@ -195,6 +195,18 @@ describe('JSON', () => {
     const text = toJson({ name });
     expect(text).not.toMatch(/[\u001b\u007f-\u009f\u2028\u202e]/);
     expect(JSON.parse(text)).toEqual({ name });
+  });
+
+  it.each([0, 1, 499, 500, 501, 1500])('in pieces is the same text, for a list of %d', (count) => {
+    const list = Array.from({ length: count }, (_, i) => ({ i, of: [i / 3, 'é\u2028'] }));
+    const around = { schema: 'x/1', model: { tiles: 2 }, left: undefined };
+    const pieces = jsonPieces({ ...around, list: list.values(), notes: ['a'] });
+    expect([...pieces].join('')).toBe(toJson({ ...around, list, notes: ['a'] }));
+  });
+
+  it('in pieces is the same text for nothing, and refuses what is not finite', () => {
+    expect([...jsonPieces({})].join('')).toBe(toJson({}));
+    expect(() => [...jsonPieces({ list: new Set([Number.NaN]) })]).toThrow(RangeError);
   });
 });
 

@@ -31,13 +31,15 @@ export const predictCommand = (io: Io): Command =>
     .option('--json', 'write JSON instead of a page')
     .addHelpText('after', () => helpText(HELP, io.columns))
     .action(async (path: string, flags: PredictFlags) => {
-      const { predict, predictionPage, toJson } = await import('../../index.ts');
+      const { jsonPieces, predict, predictEach, predictionPage } = await import('../../index.ts');
       const cones = await conesOf(flags.cone);
       const model = await modelAt(path, io);
       const { points, notes } = await somePoints(flags, { model, path }, io);
-      const answers = predict(model, points, cones);
       await tellNotes(notes, io);
-      io.out(
-        flags.json ? toJson({ ...answers, notes }) : predictionPage(answers, points, lookOf(io)),
-      );
+      if (flags.json) {
+        const answers = predictEach(model, points, cones);
+        for (const piece of jsonPieces({ ...answers, notes })) io.out(piece);
+        return;
+      }
+      io.out(predictionPage(predict(model, points, cones), points, lookOf(io)));
     });
