@@ -37,6 +37,8 @@ export interface StageDesign {
   readonly outcome: Float64Array;
   readonly weight: Float64Array;
   readonly load: Int32Array;
+  /** So many rows at the end are no tiles: see `withRising`. */
+  readonly assumed: number;
 }
 
 export interface DesignOptions {
@@ -93,6 +95,7 @@ export function stageDesign(
     outcome: Float64Array.from(own, (tile) => (isYes(name, tile) ? 1 : 0)),
     weight: Float64Array.from(own, weight ?? (() => 1)),
     load: Int32Array.from(own, ({ load }) => loadNumber.get(load)!),
+    assumed: 0,
   };
 }
 
@@ -108,8 +111,8 @@ function isYes(name: StageName, { verdict }: JudgedTile): boolean {
  * The design of some of the tiles, with the same centres.
  *
  * @param stage - design of all tiles
- * @param kept - which rows, ascending
- * @param load - load of each row kept
+ * @param kept - which tiles, ascending
+ * @param load - load of each tile kept
  * @returns the design of the rows kept
  */
 export function keptRows(
@@ -117,10 +120,11 @@ export function keptRows(
   kept: readonly number[],
   load: Int32Array,
 ): StageDesign {
-  const { size, columnCount } = stage;
-  const values = new Float64Array(kept.length * size);
-  const slopes = new Float64Array(kept.length * columnCount);
-  kept.forEach((from, to) => {
+  const { size, columnCount, assumed } = stage;
+  const rows = [...kept, ...Array.from({ length: assumed }, (_, i) => stage.tiles.length + i)];
+  const values = new Float64Array(rows.length * size);
+  const slopes = new Float64Array(rows.length * columnCount);
+  rows.forEach((from, to) => {
     values.set(stage.values.subarray(from * size, (from + 1) * size), to * size);
     const row = stage.slopes.subarray(from * columnCount, (from + 1) * columnCount);
     slopes.set(row, to * columnCount);
@@ -128,13 +132,13 @@ export function keptRows(
   return {
     ...stage,
     tiles: kept.map((i) => stage.tiles[i]!),
-    count: kept.length,
-    priorLogOdds: Float64Array.from(kept, (i) => stage.priorLogOdds[i]!),
+    count: rows.length,
+    priorLogOdds: Float64Array.from(rows, (i) => stage.priorLogOdds[i]!),
     values,
     slopes,
-    outcome: Float64Array.from(kept, (i) => stage.outcome[i]!),
-    weight: Float64Array.from(kept, (i) => stage.weight[i]!),
-    load,
+    outcome: Float64Array.from(rows, (i) => stage.outcome[i]!),
+    weight: Float64Array.from(rows, (i) => stage.weight[i]!),
+    load: Int32Array.from({ length: rows.length }, (_, i) => load[i] ?? 0),
   };
 }
 
@@ -184,7 +188,7 @@ function blockAt(
     effects[2 * i] = slope * scales.loads.offsetCones * (stretch?.[stage.load[i]!] ?? 1);
     effects[2 * i + 1] = glossSd;
   }
-  const { outcome, weight, load } = stage;
+  const { outcome, weight, load, assumed } = stage;
   return {
     count,
     size,
@@ -196,5 +200,6 @@ function blockAt(
     load,
     effects,
     flipped: own.flipped,
+    assumed,
   };
 }

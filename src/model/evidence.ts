@@ -26,6 +26,8 @@ export interface EvidenceFit {
   readonly weights: readonly Float64Array[];
   /** Per stage: covariance of the weights, lower triangle; that of the scales is in it. */
   readonly covariances: readonly Float64Array[];
+  /** The same without that of the scales. */
+  readonly covariancesAtScales: readonly Float64Array[];
   /** [loads][2]: heat less the cone on paper, in cones, and the load's intercept of gloss. */
   readonly loads: Float64Array;
   /** [loads][2]: variance of each; that of the loads' spread is in it. */
@@ -151,6 +153,7 @@ function averagedFit(
     scales,
     weights: weightsAt(design, scales, theta),
     covariances: stageCovariances(design, scales, widened),
+    covariancesAtScales: stageCovariances(design, scales, covariance),
     loads: loadsAt(scales, centre.unknowns.loads, stretch),
     loadVariance: loadVariance.map(
       (variance, k) => (variance + more[k]!) * loadSd(scales, k, stretch) ** 2,
@@ -249,7 +252,7 @@ function shareFlipped(
   let sum = startShare * pseudoTiles;
   let tiles = pseudoTiles;
   const logOdds = blockLogOdds(block, first, unknowns);
-  for (let i = 0; i < block.count; i++) {
+  for (let i = 0; i < block.count - (block.assumed ?? 0); i++) {
     const yes = sigmoid(logOdds[i]!);
     const outcome = block.outcome[i]!;
     const weight = block.weight[i]!;

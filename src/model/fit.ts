@@ -1,9 +1,16 @@
 import type { Archive } from '../archive/archive.ts';
 import { coneText } from '../firing/cone.ts';
 import { foldsByCone } from './folds.ts';
-import { heatCheck, type HeatCheck } from './heat-check.ts';
+import type { HeatCheck } from './heat-check.ts';
 import type { Model, Validation } from './model.ts';
-import { fitStages, fittedStages, isJudged, type JudgedTile, type StagesFit } from './stages.ts';
+import {
+  fitStages,
+  fittedStages,
+  isJudged,
+  type JudgedTile,
+  type RisingFit,
+  type StagesFit,
+} from './stages.ts';
 import { validation } from './validation.ts';
 
 export interface FitOptions {
@@ -36,7 +43,7 @@ export function fitModel(archive: Archive, options: FitOptions = {}): Model {
   return {
     ...model,
     validation: account,
-    notes: [...heatNotes(heatCheck(model.melt, tiles)), ...fitNotes(tiles, account)],
+    notes: [...heatNotes(fit), ...fitNotes(tiles, account)],
   };
 }
 
@@ -69,11 +76,19 @@ function modelOf(
   };
 }
 
-function heatNotes({ glazes, falling, worst }: HeatCheck): string[] {
-  if (falling === 0) return [];
+/** A smaller fall is not seen on any page. */
+const SEEN_FALL = 0.001;
+
+function heatNotes({ heatBefore, heatAfter }: RisingFit): string[] {
+  const said = (check: HeatCheck) =>
+    `for ${check.falling} of ${check.glazes} fitted glazes, by up to ${check.worst.toFixed(3)} over a quarter of a cone`;
+  const advice = 'heat hardly shows in these tiles; fire some of these glazes at another cone';
+  if (heatAfter.worst >= SEEN_FALL) {
+    return [`the chance to melt falls with more heat ${said(heatAfter)}: ${advice}`];
+  }
+  if (heatBefore.worst < SEEN_FALL) return [];
   return [
-    `the chance to melt falls with more heat for ${falling} of ${glazes} fitted glazes, by up to ` +
-      `${worst.toFixed(2)}: heat hardly shows in these tiles; fire some of these glazes at another cone`,
+    `by the tiles alone the chance to melt would fall with more heat ${said(heatBefore)}; it is held not to: ${advice}`,
   ];
 }
 

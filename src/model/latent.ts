@@ -26,6 +26,11 @@ export interface Block {
   readonly effects: Float64Array;
   /** Share of the outcomes that are the wrong way round. */
   readonly flipped: number;
+  /**
+   * So many rows at the end are no verdicts: log-odds seen at `outcome` with a Gaussian error of precision
+   * `weight`; none where absent.
+   */
+  readonly assumed?: number;
 }
 
 /** Questions that share the unknowns of their loads. */
@@ -131,12 +136,29 @@ export function logDensity(problem: LatentProblem, unknowns: Unknowns): number {
     const weights = scaledWeights(block, first, unknowns.theta);
     for (let i = 0; i < block.count; i++) {
       const logOdds = logOddsAt(block, weights, unknowns.loads, i);
-      expectedLikelihood(logOdds, sds ? sds[i]! : 0, block.outcome[i]!, block.flipped, expected);
+      likelihoodOf(block, i, logOdds, sds ? sds[i]! : 0, expected);
       sum += block.weight[i]! * expected.value;
     }
     first += block.size;
   });
   return sum - 0.5 * (sumOfSquares(unknowns.theta) + sumOfSquares(unknowns.loads));
+}
+
+function likelihoodOf(
+  { count, outcome, flipped, assumed = 0 }: Block,
+  i: number,
+  logOdds: number,
+  sd: number,
+  into: Expected,
+): void {
+  if (i < count - assumed) {
+    expectedLikelihood(logOdds, sd, outcome[i]!, flipped, into);
+    return;
+  }
+  const off = outcome[i]! - logOdds;
+  into.value = -0.5 * (off * off + sd * sd);
+  into.slope = off;
+  into.curvature = 1;
 }
 
 function sumOfSquares(values: Float64Array): number {
@@ -203,7 +225,7 @@ function addBlock(
   const gradient = new Float64Array(block.size);
   for (let i = 0; i < block.count; i++) {
     const logOdds = logOddsAt(block, weights, unknowns.loads, i);
-    expectedLikelihood(logOdds, sds ? sds[i]! : 0, block.outcome[i]!, block.flipped, expected);
+    likelihoodOf(block, i, logOdds, sds ? sds[i]! : 0, expected);
     const weight = block.weight[i]!;
     sums.likelihood += weight * expected.value;
     curvatures[i] = weight * (isExact ? expected.curvature : Math.max(0, expected.curvature));

@@ -3,6 +3,8 @@ import { evidenceFit, type EvidenceFit, type EvidenceStart } from './evidence.ts
 import type { JudgedTile } from './judged.ts';
 import type { LoadEffect, LoadSpread, Stage } from './model.ts';
 import { groupColumns, priorColumns } from './priors.ts';
+import { heatCheck, type HeatCheck } from './heat-check.ts';
+import { moreSteps, settledSteps, withRising, type RisingStep } from './rising.ts';
 import { startingScales, type Scales } from './scales.ts';
 
 export { isJudged, type FittedVerdict, type JudgedTile } from './judged.ts';
@@ -30,19 +32,48 @@ export interface FitSettings {
  *
  * @param tiles - judged tiles, in any order
  * @param settings - scales to hold, weights
- * @returns the fit
+ * @returns the fit, and how the chance to melt moves with heat
  */
 export function fitStages(
   tiles: readonly JudgedTile[],
   { heldScales, weight }: FitSettings = {},
-): StagesFit {
+): RisingFit {
   // One order for any order of rows: the sums, and so the bytes of the answer, stay the same.
   const sorted = [...tiles].sort((a, b) => (a.tile < b.tile ? -1 : 1));
   const { loads, loadNumber } = numberedLoads(sorted);
   const stages = STAGES.map((name) => stageDesign(name, sorted, { loadNumber, weight }));
   const design = { stages, loadCount: loads.length };
   const start = heldScales ? { scales: heldScales } : thinnedStart(design);
-  return fitOf(design, loads, start, heldScales !== undefined);
+  const isHeld = heldScales !== undefined;
+  return risingFit(sorted, fitOf(design, loads, start, isHeld), isHeld);
+}
+
+/** A fit under which more heat does not melt less. */
+export interface RisingFit extends StagesFit {
+  /** The tiles alone. */
+  readonly heatBefore: HeatCheck;
+  /** Once it is known that more heat does not melt less. */
+  readonly heatAfter: HeatCheck;
+}
+
+/** Two are usual, and most archives need none. */
+const MOST_RISING_ROUNDS = 20;
+
+/** The fit under which the chance to melt does not fall with heat at any fitted glaze. */
+function risingFit(tiles: readonly JudgedTile[], first: StagesFit, isHeld: boolean): RisingFit {
+  const [plainMelt, gloss] = first.design.stages;
+  const heatBefore = heatCheck(stageOf(first, 0), tiles);
+  let [fit, heatAfter] = [first, heatBefore];
+  let held: readonly RisingStep[] = [];
+  for (let round = 0; round < MOST_RISING_ROUNDS && heatAfter.falling > 0; round++) {
+    const melt = stageOf(fit, 0);
+    const atScales = { ...melt, covarianceLower: Array.from(fit.fit.covariancesAtScales[0]!) };
+    held = settledSteps(atScales, moreSteps(held, heatAfter.falls));
+    const design = { ...first.design, stages: [withRising(plainMelt!, melt, held), gloss!] };
+    fit = fitOf(design, fit.loads, fit.fit, isHeld);
+    heatAfter = heatCheck(stageOf(fit, 0), tiles);
+  }
+  return { ...fit, heatBefore, heatAfter };
 }
 
 /** Of more tiles a fifth tells nearly where the fit of all will end. */
@@ -115,7 +146,8 @@ function fitOf(
 ): StagesFit {
   const loadTiles = new Array<number>(loads.length).fill(0);
   // The first stage asks about every tile.
-  for (const l of design.stages[0]!.load) loadTiles[l]! += 1;
+  const [melt] = design.stages;
+  melt!.tiles.forEach((_, i) => (loadTiles[melt!.load[i]!]! += 1));
   return { fit: evidenceFit(design, start, isHeld), design, loads, loadTiles };
 }
 
@@ -148,10 +180,10 @@ export function fittedStages(fit: StagesFit, namedLoads: ReadonlySet<string>): F
 }
 
 function stageOf({ fit, design }: StagesFit, s: number): Stage {
-  const { name, count, outcome, radial } = design.stages[s]!;
+  const { name, tiles, outcome, radial } = design.stages[s]!;
   const prior = STAGE_PRIOR[name];
   const scales = fit.scales[name];
-  const yes = outcome.reduce((sum, y) => sum + y, 0);
+  const yes = tiles.reduce((sum, _, i) => sum + outcome[i]!, 0);
   return {
     columns: priorColumns(prior),
     radial,
@@ -165,7 +197,7 @@ function stageOf({ fit, design }: StagesFit, s: number): Stage {
     })),
     residual: { startSd: prior.startResidualSd, sd: scales.residual },
     wrongVerdicts: scales.flipped,
-    tiles: { no: count - yes, yes },
+    tiles: { no: tiles.length - yes, yes },
   };
 }
 

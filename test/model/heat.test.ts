@@ -5,10 +5,11 @@ import type { Archive } from '../../src/archive/archive.ts';
 import { parseArchive } from '../../src/archive/read-archive.ts';
 import type { Unity } from '../../src/chemistry/unity.ts';
 import { coneIndex } from '../../src/firing/cone.ts';
+import { keptRows } from '../../src/model/design.ts';
+import { evidenceFit } from '../../src/model/evidence.ts';
 import { fitModel, fitUnvalidated, type UnvalidatedModel } from '../../src/model/fit.ts';
-import { heatCheck } from '../../src/model/heat-check.ts';
 import { stageLogOdds } from '../../src/model/log-odds.ts';
-import { isJudged } from '../../src/model/stages.ts';
+import { fitStages, fittedStages, isJudged } from '../../src/model/stages.ts';
 import { averagedProbability } from '../../src/numeric/logistic-normal.ts';
 import { seededGenerator } from '../../src/numeric/random.ts';
 import { anArchive } from '../support/builders.ts';
@@ -114,24 +115,70 @@ describe('with no tiles at all P(melted) does not fall from cone 06 to 14', () =
 });
 
 describe('a studio whose tiles hardly show heat', () => {
-  const weak: InventedTruth = {
-    melt: ({ SiO2 = 0, Al2O3 = 0 }, cone) =>
-      1 - 2 * (SiO2 - 3.2) - 10 * (Al2O3 - 0.42) + 0.4 * (cone - 6),
-    gloss: ({ SiO2 = 0 }) => 3 * (SiO2 - 3),
-  };
-  const tiles = inventedTiles({ tiles: 400, seed: 605, loadErrors: LOADS, truth: weak });
-  const model = fitModel(anArchive(tiles));
+  const weakTiles = (perCone: number, tiles: number, seed: number) =>
+    inventedTiles({
+      tiles,
+      seed,
+      loadErrors: LOADS,
+      truth: {
+        melt: ({ SiO2 = 0, Al2O3 = 0 }, cone) =>
+          1 - 2 * (SiO2 - 3.2) - 10 * (Al2O3 - 0.42) + perCone * (cone - 6),
+        gloss: ({ SiO2 = 0 }) => 3 * (SiO2 - 3),
+      },
+    });
+  const weak = [
+    [0.2, 100, 611],
+    [0.2, 400, 605],
+    [0.2, 1200, 607],
+    [0.4, 100, 611],
+    [0.4, 400, 605],
+    [0, 300, 613],
+  ] as const;
 
-  it('is told how many of its glazes fall with heat, and by how much', () => {
-    const { glazes, falling, worst } = heatCheck(model.melt, tiles.filter(isJudged));
-    expect(glazes).toBe(200);
-    expect(falling).toBeGreaterThan(0);
-    const note = `falls with more heat for ${falling} of 200 fitted glazes, by up to ${worst.toFixed(2)}`;
-    expect(model.notes.filter((one) => one.includes(note))).toHaveLength(1);
+  it.each(weak)(
+    'of %d log-odds a cone, %d tiles, seed %d, falls at none of its glazes',
+    (...plan) => {
+      const archive = anArchive(weakTiles(...plan));
+      const { heatBefore, heatAfter } = fitStages(archive.tiles.filter(isJudged));
+      expect(heatBefore.falling).toBeGreaterThan(0);
+      expect([heatAfter.falling, heatAfter.worst, heatAfter.falls]).toEqual([0, 0, []]);
+      expect(fallingGlazes(archive).falling).toEqual([]);
+    },
+  );
+
+  it('is told that the tiles alone would let the chance fall', () => {
+    const tiles = weakTiles(0.4, 400, 605);
+    const { heatBefore } = fitStages(tiles.filter(isJudged));
+    const note = `would fall with more heat for ${heatBefore.falling} of 400 fitted glazes, by up to ${heatBefore.worst.toFixed(3)}`;
+    const { notes } = fitModel(anArchive(tiles));
+    expect(notes.filter((one) => one.includes(note))).toHaveLength(1);
   });
 
   it('and one whose tiles show it is not', () => {
     const { notes } = fitModel(anArchive(inventedTiles({ tiles: 90, seed: 8 })));
-    expect(notes.filter((note) => note.includes('falls with more heat'))).toEqual([]);
+    expect(notes.filter((note) => note.includes('with more heat'))).toEqual([]);
+  });
+
+  it('is answered nearer to its truth than by the tiles alone', () => {
+    // The same tiles; the second fit is that of the first round, without the knowledge.
+    const tiles = weakTiles(0.4, 400, 605).filter(isJudged);
+    const fit = fitStages(tiles);
+    const [melt, gloss] = fit.design.stages;
+    const bare = keptRows(
+      { ...melt, assumed: 0 },
+      tiles.map((_, i) => i),
+      melt.load,
+    );
+    const alone = { ...fit, design: { ...fit.design, stages: [bare, gloss] } };
+    const plain = { ...alone, fit: evidenceFit(alone.design) };
+    const errors = [fit, plain].map((one) => {
+      const { melt: stage } = fittedStages(one, new Set());
+      const offs = tiles.map(({ unity }) => {
+        const at = (cone: number) => stageLogOdds(stage, unity, cone).mean;
+        return (at(7) - at(5) - 0.8) ** 2;
+      });
+      return offs.reduce((sum, square) => sum + square, 0);
+    });
+    expect(errors[0]).toBeLessThan(0.8 * errors[1]);
   });
 });
