@@ -126,7 +126,7 @@ export function surfaceProbability(
 }
 
 /** So many offsets of equal weight stand for Student's t. */
-const OFFSETS = 9;
+const OFFSETS = 11;
 
 /**
  * Offsets that each stand for the same share of the loads, in units of their spread: the middles of equal

@@ -42,7 +42,7 @@ export const MELT_PRIOR: StagePrior = {
     { name: 'intercept', startSd: 2, means: { '1': 3 } },
     { name: 'silica and alumina', startSd: 1, means: { SiO2: -2, Al2O3: -1 } },
     { name: 'fluxes', startSd: 0.7, means: { B2O3: 1.5, KNaO: 0.7, MgO: -0.3, ZnO: 0 } },
-    { name: 'heat', startSd: 0.5, means: { heat: 1.6 } },
+    { name: 'heat', startSd: 0.6, means: { heat: 1.7 } },
     {
       name: 'curvature',
       startSd: 0.4,

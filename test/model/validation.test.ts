@@ -102,7 +102,7 @@ describe('a load not seen', () => {
     loadSpread: { ...stages.loadSpread, offsetScaleCones },
   });
 
-  // Nine equal shares leave the far tails out: they cost 0.0015 of a probability where loads spread as they
+  // Eleven equal shares leave the far tails out: they cost 0.0015 of a probability where loads spread as they
   // usually do, and 0.0105 at a spread of one cone, wider than any archive has.
   it.each([
     { sd: 0.2, most: 0.002 },
