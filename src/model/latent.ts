@@ -1,5 +1,5 @@
 import { lowerIndex } from '../numeric/linalg.ts';
-import { addCrossProducts } from './cross-products.ts';
+import { addCrossProducts } from '../numeric/cross-products.ts';
 import { expectedLikelihood, type Expected } from './label-noise.ts';
 
 /** Unknowns of a load: see `Block.effects`. */
