@@ -98,14 +98,13 @@ export function evidenceFit(
   for (let move = Infinity; rounds < MOST_ROUNDS && move > tolerance; rounds++) {
     const problem = problemAt(design, scales, weights, stretch);
     const from = unknownsAt(design, scales, weights, loads, stretch);
-    const step = soundStep(problem, from);
+    const { step, spread } = soundStep(problem, from);
     const unknowns = backtracked(problem, from, step) ?? from;
     const reached = weightsAt(design, scales, unknowns.theta);
     move = largestDifference(weights, reached);
     weights = reached;
     loads = loadsAt(scales, unknowns.loads, stretch);
     if (isHeld) continue;
-    const spread = posteriorSpread(step);
     const next = reEstimated(design, problem, scales, unknowns, spread);
     move = Math.max(move, largestMove(scales, next));
     widenOutliers(stretch, unknowns, spread);
@@ -124,12 +123,21 @@ export function evidenceFit(
 const MOST_VARIANCE = 1.05;
 
 /** The exact step, unless its curvature leaves less known than the prior does. */
-function soundStep(problem: LatentProblem, unknowns: Unknowns): NewtonStep {
+function soundStep(
+  problem: LatentProblem,
+  unknowns: Unknowns,
+): { readonly step: NewtonStep; readonly spread: PosteriorSpread } {
   const step = exactStep(problem, unknowns);
-  const { covariance, loadVariance } = posteriorSpread(step);
+  const spread = posteriorSpread(step);
+  if (largestVariance(spread, step.theta.length) <= MOST_VARIANCE) return { step, spread };
+  const sound = newtonStep(problem, unknowns);
+  return { step: sound, spread: posteriorSpread(sound) };
+}
+
+function largestVariance({ covariance, loadVariance }: PosteriorSpread, size: number): number {
   let most = loadVariance.reduce((a, b) => Math.max(a, b), 0);
-  for (let j = 0; j < step.theta.length; j++) most = Math.max(most, covariance[lowerIndex(j, j)]!);
-  return most <= MOST_VARIANCE ? step : newtonStep(problem, unknowns);
+  for (let j = 0; j < size; j++) most = Math.max(most, covariance[lowerIndex(j, j)]!);
+  return most;
 }
 
 function averagedFit(

@@ -1,4 +1,5 @@
-import { choleskyFactor, choleskySolve, dot, lowerIndex } from '../numeric/linalg.ts';
+import { addPairedProducts } from '../numeric/cross-products.ts';
+import { choleskyFactor, choleskySolve, dot } from '../numeric/linalg.ts';
 import {
   LOAD_UNKNOWNS,
   logDensity,
@@ -126,10 +127,11 @@ function solvedStep(system: NewtonSystem): NewtonStep | undefined {
   const loadInverse = inverseBlocks(system.loadPrecision);
   if (loadInverse === undefined) return undefined;
   const pulled = pulledCoupling(coupling, loadInverse, width);
-  const reduced = Float64Array.from(precision);
+  const reduced = eliminated(precision, pulled, coupling, width);
   const right = Float64Array.from(gradient);
   for (let row = 0; row < loadGradient.length; row++) {
-    eliminate(reduced, right, pulled, coupling, row * width, loadGradient[row]!);
+    const pull = loadGradient[row]!;
+    for (let j = 0, at = row * width; j < width; j++, at++) right[j]! -= pull * pulled[at]!;
   }
   const factor = positiveFactor(reduced, width);
   if (factor === undefined) return undefined;
@@ -190,23 +192,16 @@ function pulledCoupling(
   return pulled;
 }
 
-/** Takes one unknown of a load out of the weights' equations, in place. */
-function eliminate(
+/** The weights' precision with the loads taken out. */
+function eliminated(
   precision: Float64Array,
-  right: Float64Array,
   pulled: Float64Array,
   coupling: Float64Array,
-  base: number,
-  loadGradient: number,
-): void {
-  const width = right.length;
-  for (let j = 0; j < width; j++) {
-    const pull = pulled[base + j]!;
-    if (pull === 0) continue;
-    right[j]! -= pull * loadGradient;
-    let cell = lowerIndex(j, 0);
-    for (let k = 0; k <= j; k++) precision[cell++]! -= pull * coupling[base + k]!;
-  }
+  width: number,
+): Float64Array {
+  const taken = new Float64Array(precision.length);
+  addPairedProducts(pulled, coupling, width, taken);
+  return precision.map((value, cell) => value - taken[cell]!);
 }
 
 function loadSteps(

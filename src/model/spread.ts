@@ -1,10 +1,5 @@
-import {
-  choleskyInverse,
-  dot,
-  lowerIndex,
-  quadraticForm,
-  symmetricTimes,
-} from '../numeric/linalg.ts';
+import { choleskyInverse, dot, lowerIndex } from '../numeric/linalg.ts';
+import { quadraticForms, symmetricImages } from '../numeric/symmetric-images.ts';
 import { LOAD_UNKNOWNS, type Block, type LatentProblem } from './latent.ts';
 import type { NewtonStep } from './newton.ts';
 
@@ -30,31 +25,11 @@ export function posteriorSpread({
 }: NewtonStep): PosteriorSpread {
   const width = theta.length;
   const covariance = choleskyInverse(factor, width);
-  const loadVariance = new Float64Array((loadInverse.length / 3) * LOAD_UNKNOWNS);
+  const loadVariance = quadraticForms(pulled, width, covariance);
   for (let row = 0; row < loadVariance.length; row++) {
-    const own = loadInverse[3 * (row >> 1) + 2 * (row % 2)]!;
-    loadVariance[row] = own + sparseQuadraticForm(covariance, pulled, row * width, width);
+    loadVariance[row]! += loadInverse[3 * (row >> 1) + 2 * (row % 2)]!;
   }
   return { covariance, loadVariance };
-}
-
-/** x' A x for a vector with many zeros: a load without melted tiles says nothing of gloss. */
-function sparseQuadraticForm(
-  lower: Float64Array,
-  vectors: Float64Array,
-  base: number,
-  size: number,
-): number {
-  let sum = 0;
-  for (let i = 0; i < size; i++) {
-    const x = vectors[base + i]!;
-    if (x === 0) continue;
-    const row = lowerIndex(i, 0);
-    let inner = 0;
-    for (let j = 0; j < i; j++) inner += lower[row + j]! * vectors[base + j]!;
-    sum += x * (2 * inner + lower[row + i]! * x);
-  }
-  return sum;
 }
 
 /**
@@ -74,9 +49,11 @@ export function rowSds({ blocks, loadCount }: LatentProblem, step: NewtonStep): 
   return blocks.map((block) => {
     const own = ownCovariance(covariance, first, block);
     const images = ownImages(ofLoads.images, first, block, step.theta.length);
-    const sds = Float64Array.from({ length: block.count }, (_, i) =>
-      Math.sqrt(rowVariance(block, i, own, images, ofLoads.variances)),
-    );
+    const sds = quadraticForms(block.rows, block.size, own);
+    for (let i = 0; i < block.count; i++) {
+      const more = loadVariance(block, i, images, ofLoads.variances);
+      sds[i] = Math.sqrt(Math.max(0, sds[i]! + more));
+    }
     first += block.size;
     return sds;
   });
@@ -96,7 +73,7 @@ function loadTerms(
   loadCount: number,
 ): LoadTerms {
   const width = theta.length;
-  const images = new Float64Array(LOAD_UNKNOWNS * loadCount * width);
+  const images = symmetricImages(pulled, width, covariance);
   const variances = Float64Array.from(loadInverse);
   for (let l = 0; l < loadCount; l++) {
     const at = LOAD_UNKNOWNS * l * width;
@@ -104,8 +81,6 @@ function loadTerms(
       pulled.subarray(at, at + width),
       pulled.subarray(at + width, at + 2 * width),
     ];
-    images.set(symmetricTimes(covariance, one), at);
-    images.set(symmetricTimes(covariance, two), at + width);
     variances[3 * l]! += dot(one, images.subarray(at, at + width));
     variances[3 * l + 1]! += dot(two, images.subarray(at, at + width));
     variances[3 * l + 2]! += dot(two, images.subarray(at + width, at + 2 * width));
@@ -146,24 +121,24 @@ function ownImages(
   return own;
 }
 
-function rowVariance(
+/** What a row's load adds to the variance of its log-odds, and takes off by what the two share. */
+function loadVariance(
   { size, rows, load, effects }: Block,
   i: number,
-  own: Float64Array,
   images: Float64Array,
   variances: Float64Array,
 ): number {
-  const [one, two] = [effects[2 * i]!, effects[2 * i + 1]!];
-  const x = rows.subarray(i * size, (i + 1) * size);
+  const one = effects[2 * i]!;
+  const two = effects[2 * i + 1]!;
   const at = LOAD_UNKNOWNS * load[i]! * size;
   let shared = 0;
-  for (let j = 0; j < size; j++) {
-    shared += x[j]! * (one * images[at + j]! + two * images[at + size + j]!);
+  for (let j = 0, x = i * size; j < size; j++, x++) {
+    shared += rows[x]! * (one * images[at + j]! + two * images[at + size + j]!);
   }
   const block = 3 * load[i]!;
   const ofLoad =
     variances[block]! * one * one +
     2 * variances[block + 1]! * one * two +
     variances[block + 2]! * two * two;
-  return Math.max(0, quadraticForm(own, x) - 2 * shared + ofLoad);
+  return ofLoad - 2 * shared;
 }

@@ -4,19 +4,19 @@ import { op, wasmBytes, type Code } from './wasm-module.ts';
 export const TILE = 4;
 const BYTES = 8;
 
-/** What the loop is given: addresses, counts; then what it works with. */
-const [WEIGHTED, PLAIN, SUMS, COUNT, SIZE, PADDED] = [0, 1, 2, 3, 4, 5] as const;
-const [ROW, COLUMN, FROM_WEIGHTED, FROM_PLAIN, END, STRIDE, CELL, SUMS_STRIDE] = [
-  6, 7, 8, 9, 10, 11, 12, 13,
+/** What the loop is given, then what it works with. */
+const [LEFT, RIGHT, SUMS, COUNT, LEFT_STRIDE, RIGHT_STRIDE, SUMS_STRIDE] = [
+  0, 1, 2, 3, 4, 5, 6,
 ] as const;
-const WHOLE_LOCALS = 8;
-const FIRST_SUM = 14;
+const [ROWS, COLUMNS, SLOPE] = [7, 8, 9] as const;
+const PARAMETERS = 10;
+const [ROW, COLUMN, FROM_LEFT, FROM_RIGHT, END, CELL] = [10, 11, 12, 13, 14, 15] as const;
+const WHOLE_LOCALS = 6;
+const FIRST_SUM = PARAMETERS + WHOLE_LOCALS;
 const SUM_PAIRS = (TILE * TILE) / 2;
-const [LEFT, RIGHT, FACTOR] = [
-  FIRST_SUM + SUM_PAIRS,
-  FIRST_SUM + SUM_PAIRS + 1,
-  FIRST_SUM + SUM_PAIRS + 2,
-];
+const FIRST = FIRST_SUM + SUM_PAIRS;
+const SECOND = FIRST + 1;
+const FACTOR = FIRST + 2;
 const PAIR_LOCALS = SUM_PAIRS + 3;
 
 const { get, set, add, multiply, constant } = op;
@@ -24,24 +24,24 @@ const inBytes = (numbers: Code): Code => multiply(numbers, constant(BYTES));
 const step = (local: number, by: Code): Code => set(local, add(get(local), by));
 const tileRows = Array.from({ length: TILE }, (_, r) => r);
 
-/** One row's share in the sums of a tile. */
-const oneRow: Code = [
-  ...set(LEFT, op.loadPair(get(FROM_PLAIN), 0)),
-  ...set(RIGHT, op.loadPair(get(FROM_PLAIN), 2 * BYTES)),
+/** One term of each sum of a tile. */
+const oneTerm: Code = [
+  ...set(FIRST, op.loadPair(get(FROM_RIGHT), 0)),
+  ...set(SECOND, op.loadPair(get(FROM_RIGHT), 2 * BYTES)),
   ...tileRows.flatMap((r) => [
-    ...set(FACTOR, op.loadTwice(get(FROM_WEIGHTED), BYTES * r)),
-    ...[LEFT, RIGHT].flatMap((pair, side) => {
+    ...set(FACTOR, op.loadTwice(get(FROM_LEFT), BYTES * r)),
+    ...[FIRST, SECOND].flatMap((pair, side) => {
       const sum = FIRST_SUM + 2 * r + side;
       return set(sum, op.addPairs(get(sum), op.multiplyPairs(get(FACTOR), get(pair))));
     }),
   ]),
-  ...step(FROM_WEIGHTED, get(STRIDE)),
-  ...step(FROM_PLAIN, get(STRIDE)),
+  ...step(FROM_LEFT, get(LEFT_STRIDE)),
+  ...step(FROM_RIGHT, get(RIGHT_STRIDE)),
 ];
 
 /** Does something with each pair of the tile's sums, at its address. */
 const eachSum = (act: (sum: number, offset: number) => Code): Code => [
-  ...set(CELL, add(get(SUMS), inBytes(add(multiply(get(ROW), get(PADDED)), get(COLUMN))))),
+  ...set(CELL, add(get(SUMS), add(multiply(get(ROW), get(SUMS_STRIDE)), inBytes(get(COLUMN))))),
   ...tileRows.flatMap((r) => [
     ...act(FIRST_SUM + 2 * r, 0),
     ...act(FIRST_SUM + 2 * r + 1, 2 * BYTES),
@@ -50,44 +50,42 @@ const eachSum = (act: (sum: number, offset: number) => Code): Code => [
 ];
 
 const oneTile: Code = [
-  ...set(FROM_WEIGHTED, add(get(WEIGHTED), inBytes(get(ROW)))),
-  ...set(FROM_PLAIN, add(get(PLAIN), inBytes(get(COLUMN)))),
-  ...set(END, add(get(FROM_WEIGHTED), multiply(get(COUNT), get(STRIDE)))),
+  ...set(FROM_LEFT, add(get(LEFT), inBytes(get(ROW)))),
+  ...set(FROM_RIGHT, add(get(RIGHT), inBytes(get(COLUMN)))),
+  ...set(END, add(get(FROM_LEFT), multiply(get(COUNT), get(LEFT_STRIDE)))),
   ...eachSum((sum, offset) => set(sum, op.loadPair(get(CELL), offset))),
-  ...op.repeat(oneRow, op.isBelow(get(FROM_WEIGHTED), get(END))),
+  ...op.repeat(oneTerm, op.isBelow(get(FROM_LEFT), get(END))),
   ...eachSum((sum, offset) => op.storePair(get(CELL), offset, get(sum))),
   ...step(COLUMN, constant(TILE)),
 ];
 
+const columnsEnd: Code = add(get(COLUMNS), multiply(get(SLOPE), get(ROW)));
 const tilesOfRow: Code = [
   ...set(COLUMN, constant(0)),
-  ...op.repeat(oneTile, op.isAtMost(get(COLUMN), get(ROW))),
+  ...op.repeat(oneTile, op.isBelow(get(COLUMN), columnsEnd)),
   ...step(ROW, constant(TILE)),
 ];
 
 /**
- * The loop that adds rows' cross products to sums, tile by tile below the diagonal:
+ * The loop that adds products of columns to sums, in tiles:
  *
- *     products(weighted, plain, sums, count, size, padded)
- *     sums[j][k] += weighted[i][j] plain[i][k], for each row i in turn
+ *     products(left, right, sums, count, left stride, right stride, sums stride, rows, columns, slope)
+ *     sums[j][k] += left[i][j] right[i][k], for each i below count in turn
  *
- * The first three are addresses of [count][size], [count][size] and [padded][padded]; count and size are
- * at least 1, padded is the size rounded up to whole tiles. Past the last column of a row it reads what comes
- * next, and its sums there mean nothing.
+ * for all tiles that begin at j below rows and k below columns + slope j. Addresses and strides are in bytes;
+ * count, rows and columns at least 1. Tiles that stand out over the edge read and write what is there.
  *
  * @param pages - memory to begin with, in 64 KiB
  * @returns a module in binary form
  */
-export function crossProductsModule(pages: number): Uint8Array {
+export function productsModule(pages: number): Uint8Array {
   const body: Code = [
-    ...set(STRIDE, inBytes(get(SIZE))),
-    ...set(SUMS_STRIDE, inBytes(get(PADDED))),
     ...set(ROW, constant(0)),
-    ...op.repeat(tilesOfRow, op.isBelow(get(ROW), get(SIZE))),
+    ...op.repeat(tilesOfRow, op.isBelow(get(ROW), get(ROWS))),
   ];
   const products = {
     name: 'products',
-    parameters: 6,
+    parameters: PARAMETERS,
     wholeLocals: WHOLE_LOCALS,
     pairLocals: PAIR_LOCALS,
     body,

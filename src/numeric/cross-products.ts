@@ -1,45 +1,8 @@
-import { crossProductsModule, TILE } from './cross-products-loop.ts';
-import type { WasmExports } from './wasm-module.ts';
+import { TILE } from './cross-products-loop.ts';
+import { inTiles, productLoop, type ProductLoop } from './product-loop.ts';
 
-/** What is used of the engine's WebAssembly, which the types of Node leave out. */
-interface WasmEngine {
-  readonly Module: new (bytes: Uint8Array) => object;
-  readonly Instance: new (module: object) => { readonly exports: WasmExports & HasMemory };
-}
-interface HasMemory {
-  readonly memory: { readonly buffer: ArrayBuffer; readonly grow: (pages: number) => number };
-}
-
-const PAGE_NUMBERS = 8192;
-const FIRST_PAGES = 8;
-const BYTES = 8;
 /** So many rows at a time stay in the processor's nearest memory. */
 const ROWS_AT_ONCE = 32;
-
-/** The loop made ready, and its memory seen as numbers; undefined where the engine has none. */
-interface Loop {
-  readonly exports: WasmExports & HasMemory;
-  numbers: Float64Array;
-}
-
-let made: { readonly loop: Loop | undefined } | undefined;
-
-function readyLoop(): Loop | undefined {
-  made ??= { loop: madeLoop() };
-  return made.loop;
-}
-
-/** An engine may lack WebAssembly, or may not be allowed to compile it. */
-function madeLoop(): Loop | undefined {
-  const engine = (globalThis as { readonly WebAssembly?: WasmEngine }).WebAssembly;
-  if (engine === undefined) return undefined;
-  try {
-    const { exports } = new engine.Instance(new engine.Module(crossProductsModule(FIRST_PAGES)));
-    return { exports, numbers: new Float64Array(exports.memory.buffer) };
-  } catch {
-    return undefined;
-  }
-}
 
 /**
  * Adds the rows' weighted cross products: the inner loop of the fit, which takes most of its time.
@@ -58,68 +21,96 @@ export function addCrossProducts(
   weights: Float64Array,
   products: Float64Array,
 ): void {
-  if (size === 0 || weights.length === 0) return;
-  const loop = readyLoop();
-  if (loop === undefined) addPlainly(rows, size, weights, products);
-  else addByLoop(loop, rows, size, weights, products);
+  addChunks({ rows, size, count: weights.length }, products, (chunk, first, weighted) => {
+    for (let at = 0, i = first; at < chunk.length; i++) {
+      const weight = weights[i]!;
+      for (let j = 0; j < size; j++, at++) weighted[at] = weight * chunk[at]!;
+    }
+  });
+}
+
+/**
+ * Adds the products of each row of one matrix with the same row of another, as far as they stand below the
+ * diagonal: of use where their sum is symmetric.
+ *
+ * @param left - [rows][size]
+ * @param right - [rows][size]
+ * @param size - columns
+ * @param products - lower triangle, changed
+ */
+export function addPairedProducts(
+  left: Float64Array,
+  right: Float64Array,
+  size: number,
+  products: Float64Array,
+): void {
+  const count = size === 0 ? 0 : right.length / size;
+  addChunks({ rows: right, size, count }, products, (chunk, first, weighted) => {
+    weighted.set(left.subarray(first * size, first * size + chunk.length));
+  });
+}
+
+interface Rows {
+  readonly rows: Float64Array;
+  readonly size: number;
+  readonly count: number;
+}
+
+/** Writes the left side of the products of some rows. */
+type FillLeft = (chunk: Float64Array, first: number, left: Float64Array) => void;
+
+function addChunks(given: Rows, products: Float64Array, fillLeft: FillLeft): void {
+  if (given.size === 0 || given.count === 0) return;
+  const loop = productLoop();
+  if (loop === undefined) addPlainly(given, products, fillLeft);
+  else addByLoop(loop, given, products, fillLeft);
 }
 
 function addByLoop(
-  loop: Loop,
-  rows: Float64Array,
-  size: number,
-  weights: Float64Array,
+  loop: ProductLoop,
+  { rows, size, count }: Rows,
   products: Float64Array,
+  fillLeft: FillLeft,
 ): void {
-  const padded = Math.ceil(size / TILE) * TILE;
-  const plainAt = ROWS_AT_ONCE * size + TILE;
-  const sumsAt = 2 * plainAt;
-  const numbers = withRoom(loop, sumsAt + padded * padded);
-  numbers.fill(0, sumsAt, sumsAt + padded * padded);
-  for (let first = 0; first < weights.length; first += ROWS_AT_ONCE) {
-    const count = Math.min(ROWS_AT_ONCE, weights.length - first);
-    const chunk = rows.subarray(first * size, (first + count) * size);
-    numbers.set(chunk, plainAt);
-    for (let i = 0, at = 0; i < count; i++) {
-      const weight = weights[first + i]!;
-      for (let j = 0; j < size; j++, at++) numbers[at] = weight * chunk[at]!;
-    }
-    loop.exports['products']!(0, BYTES * plainAt, BYTES * sumsAt, count, size, padded);
+  const padded = inTiles(size);
+  const left = { at: 0, stride: size };
+  // A tile reads past the last column.
+  const right = { at: ROWS_AT_ONCE * size + TILE, stride: size };
+  const sums = { at: 2 * right.at, stride: padded };
+  const numbers = loop.numbers(sums.at + padded * padded);
+  numbers.fill(0, sums.at, sums.at + padded * padded);
+  for (let first = 0; first < count; first += ROWS_AT_ONCE) {
+    const here = Math.min(ROWS_AT_ONCE, count - first);
+    const chunk = rows.subarray(first * size, (first + here) * size);
+    numbers.set(chunk, right.at);
+    fillLeft(chunk, first, numbers);
+    loop.run(left, right, sums, here, { rows: size, columns: size, isLower: true });
   }
   for (let j = 0, cell = 0; j < size; j++) {
-    for (let k = 0; k <= j; k++) products[cell++]! += numbers[sumsAt + j * padded + k]!;
+    for (let k = 0; k <= j; k++) products[cell++]! += numbers[sums.at + j * padded + k]!;
   }
-}
-
-function withRoom(loop: Loop, wanted: number): Float64Array {
-  const missing = wanted - loop.numbers.length;
-  if (missing > 0) {
-    loop.exports.memory.grow(Math.ceil(missing / PAGE_NUMBERS));
-    loop.numbers = new Float64Array(loop.exports.memory.buffer);
-  }
-  return loop.numbers;
 }
 
 /**
  * The same without WebAssembly, for engines that have none.
  *
- * @param rows - [rows][size]
- * @param size - columns
- * @param weights - of each row
+ * @param given - rows
  * @param products - lower triangle, changed
+ * @param fillLeft - writes the left side of the products of some rows
  */
 export function addPlainly(
-  rows: Float64Array,
-  size: number,
-  weights: Float64Array,
+  { rows, size, count }: Rows,
   products: Float64Array,
+  fillLeft: FillLeft,
 ): void {
   const sums = new Float64Array(products.length);
-  for (let i = 0; i < weights.length; i++) {
-    const base = i * size;
+  const left = new Float64Array(size);
+  for (let i = 0; i < count; i++) {
+    const row = rows.subarray(i * size, (i + 1) * size);
+    fillLeft(row, i, left);
     for (let j = 0, cell = 0; j < size; j++) {
-      const factor = weights[i]! * rows[base + j]!;
-      for (let k = 0; k <= j; k++) sums[cell++]! += factor * rows[base + k]!;
+      const factor = left[j]!;
+      for (let k = 0; k <= j; k++) sums[cell++]! += factor * row[k]!;
     }
   }
   for (let cell = 0; cell < sums.length; cell++) products[cell]! += sums[cell]!;

@@ -1,3 +1,5 @@
+import { addPairedProducts } from './cross-products.ts';
+
 /** Lower triangle of a symmetric matrix, row by row: element (i, j <= i) at i (i + 1) / 2 + j. */
 export type LowerTriangle = Float64Array;
 
@@ -181,15 +183,12 @@ export function choleskyLogDeterminant(factor: LowerTriangle, size: number): num
 export function choleskyInverse(factor: LowerTriangle, size: number): LowerTriangle {
   const ofFactor = lowerInverse(factor, size);
   const inverse = new Float64Array(factor.length);
-  // A^-1 is the sum of the outer products of the rows of L^-1: rows are read as they are stored.
+  // A^-1 is the sum of the outer products of the rows of L^-1.
+  const rows = new Float64Array(size * size);
   for (let k = 0; k < size; k++) {
-    const row = lowerIndex(k, 0);
-    for (let i = 0; i <= k; i++) {
-      const scale = ofFactor[row + i]!;
-      const cell = lowerIndex(i, 0);
-      for (let j = 0; j <= i; j++) inverse[cell + j]! += scale * ofFactor[row + j]!;
-    }
+    rows.set(ofFactor.subarray(lowerIndex(k, 0), lowerIndex(k + 1, 0)), k * size);
   }
+  addPairedProducts(rows, rows, size, inverse);
   return inverse;
 }
 

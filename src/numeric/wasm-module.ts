@@ -32,7 +32,6 @@ export const op = {
   add: (a: Code, b: Code): Code => [...a, ...b, 0x6a],
   multiply: (a: Code, b: Code): Code => [...a, ...b, 0x6c],
   isBelow: (a: Code, b: Code): Code => [...a, ...b, 0x49],
-  isAtMost: (a: Code, b: Code): Code => [...a, ...b, 0x4d],
   /** Runs the body, and again as long as the condition holds after it. */
   repeat: (body: Code, condition: Code): Code => [
     0x03,

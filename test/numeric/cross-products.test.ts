@@ -29,7 +29,9 @@ describe('weighted cross products', () => {
       const fast = new Float64Array(lowerIndex(shape[1], 0)).fill(0.5);
       const plain = fast.slice();
       addCrossProducts(rows, shape[1], weights, fast);
-      addPlainly(rows, shape[1], weights, plain);
+      addPlainly({ rows, size: shape[1], count: shape[0] }, plain, (row, i, left) => {
+        row.forEach((value, j) => (left[j] = weights[i] * value));
+      });
       expect(fast).toEqual(plain);
       expect(fast.some((value) => value !== 0.5)).toBe(true);
     },
