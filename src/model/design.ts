@@ -1,8 +1,8 @@
 import { dot } from '../numeric/linalg.ts';
-import { columnValues, heatSlopes, scaledInputs } from './inputs.ts';
+import { fillColumnValues, heatSlopes, scaledInputs, type Inputs } from './inputs.ts';
 import type { Block, LatentProblem } from './latent.ts';
 import { GLOSS_PRIOR, MELT_PRIOR, priorColumns, type StagePrior } from './priors.ts';
-import { chosenCentres, radialPlace, radialValues, type Radial } from './radial.ts';
+import { centresAndValues, radialPlace, type Radial } from './radial.ts';
 import type { Scales } from './scales.ts';
 import type { JudgedTile } from './judged.ts';
 
@@ -68,35 +68,51 @@ export function stageDesign(
   const prior = STAGE_PRIOR[name];
   const columns = priorColumns(prior);
   const inputs = own.map(({ unity, heat }) => scaledInputs(unity, heat.coneIndex));
-  const places = inputs.map(radialPlace);
   const most = Math.min(MOST_CENTRES, Math.floor(own.length / TILES_PER_CENTRE));
-  const radial = chosenCentres(places, most);
-  const rows = inputs.map((row, i) => [
-    ...columnValues(row, columns),
-    ...radialValues(radial, places[i]!).values,
-  ]);
-  const radialColumns = radial.centres.map(() => 0);
+  const { radial, values: radialPart } = centresAndValues(inputs.map(radialPlace), most);
   const priorMean = prior.groups.flatMap(({ means }) => Object.values(means));
+  const radialColumns = radial.centres.map(() => 0);
   return {
     name,
     tiles: own,
     count: own.length,
     size: columns.length + radialColumns.length,
     priorMean: [...priorMean, ...radialColumns],
-    priorLogOdds: Float64Array.from(rows, (row) => dot(priorMean, row)),
     groupOf: [
       ...prior.groups.flatMap(({ means }, g) => Object.keys(means).map(() => g)),
       ...radialColumns.map(() => prior.groups.length),
     ],
     radial,
-    values: Float64Array.from(rows.flat()),
-    slopes: Float64Array.from(inputs.flatMap((row) => heatSlopes(row, columns))),
+    ...designNumbers(inputs, columns, priorMean, radialPart),
     columnCount: columns.length,
     outcome: Float64Array.from(own, (tile) => (isYes(name, tile) ? 1 : 0)),
     weight: Float64Array.from(own, weight ?? (() => 1)),
     load: Int32Array.from(own, ({ load }) => loadNumber.get(load)!),
     assumed: 0,
   };
+}
+
+/** The rows of a design, their growth with heat, and their log-odds at the prior means. */
+function designNumbers(
+  inputs: readonly Inputs[],
+  columns: readonly string[],
+  priorMean: readonly number[],
+  radialPart: Float64Array,
+): Pick<StageDesign, 'values' | 'slopes' | 'priorLogOdds'> {
+  const centres = inputs.length === 0 ? 0 : radialPart.length / inputs.length;
+  const size = columns.length + centres;
+  const values = new Float64Array(inputs.length * size);
+  const slopes = new Float64Array(inputs.length * columns.length);
+  const priorLogOdds = new Float64Array(inputs.length);
+  const row: number[] = [];
+  inputs.forEach((own, i) => {
+    fillColumnValues(own, columns, row);
+    values.set(row, i * size);
+    values.set(radialPart.subarray(i * centres, (i + 1) * centres), i * size + columns.length);
+    slopes.set(heatSlopes(own, columns), i * columns.length);
+    priorLogOdds[i] = dot(priorMean, row);
+  });
+  return { values, slopes, priorLogOdds };
 }
 
 function isGlossOrMatte({ verdict }: JudgedTile): boolean {

@@ -78,31 +78,70 @@ export function kernel(a: ArrayLike<number>, b: ArrayLike<number>): number {
  * Gaussian Processes for Machine Learning, MIT Press 2006, section 8.3.
  */
 export function chosenCentres(places: readonly (readonly number[])[], most: number): Radial {
+  return centresAndValues(places, most).radial;
+}
+
+/**
+ * The same with the radial columns of the places, which come by the way.
+ *
+ * @param places - places of the tiles, in an order that does not depend on the rows
+ * @param most - most centres
+ * @returns centres and their factor; [places][centres]
+ */
+export function centresAndValues(
+  places: readonly (readonly number[])[],
+  most: number,
+): { readonly radial: Radial; readonly values: Float64Array } {
+  const stride = Math.min(most, places.length);
   const left = new Float64Array(places.length).fill(1);
-  const columns: Float64Array[] = [];
+  const columns = new Float64Array(places.length * stride);
   const pivots: number[] = [];
-  while (pivots.length < Math.min(most, places.length)) {
+  while (pivots.length < stride) {
     let next = 0;
     for (let i = 1; i < left.length; i++) if (left[i]! > left[next]! + TIE) next = i;
     if (left[next]! < LEAST_EXPLAINED) break;
-    const root = Math.sqrt(left[next]!);
-    const column = Float64Array.from(places, (place, i) => {
-      let value = kernel(place, places[next]!);
-      for (const earlier of columns) value -= earlier[i]! * earlier[next]!;
-      return value / root;
-    });
-    column.forEach((value, i) => {
-      left[i]! -= value * value;
-    });
-    columns.push(column);
+    addCentre(places, next, { columns, stride, known: pivots.length, left });
     pivots.push(next);
   }
+  const count = pivots.length;
+  const values = new Float64Array(places.length * count);
+  for (let i = 0; i < places.length; i++) {
+    values.set(columns.subarray(i * stride, i * stride + count), i * count);
+  }
   return {
-    centres: pivots.map((pivot) => places[pivot]!),
-    factorLower: pivots.flatMap((pivot, i) =>
-      columns.slice(0, i + 1).map((column) => column[pivot]!),
-    ),
+    radial: {
+      centres: pivots.map((pivot) => places[pivot]!),
+      factorLower: pivots.flatMap((pivot, i) =>
+        Array.from(columns.subarray(pivot * stride, pivot * stride + i + 1)),
+      ),
+    },
+    values,
   };
+}
+
+/** The column of one centre more, and what it explains of each place. */
+function addCentre(
+  places: readonly (readonly number[])[],
+  pivot: number,
+  state: {
+    /** [places][stride], of which so many are known. */
+    readonly columns: Float64Array;
+    readonly stride: number;
+    readonly known: number;
+    readonly left: Float64Array;
+  },
+): void {
+  const { columns, stride, known, left } = state;
+  const own = columns.slice(pivot * stride, pivot * stride + known);
+  const root = Math.sqrt(left[pivot]!);
+  const centre = places[pivot]!;
+  for (let i = 0, at = 0; i < places.length; i++, at += stride) {
+    let value = kernel(places[i]!, centre);
+    for (let k = 0; k < known; k++) value -= columns[at + k]! * own[k]!;
+    value /= root;
+    columns[at + known] = value;
+    left[i]! -= value * value;
+  }
 }
 
 /**
