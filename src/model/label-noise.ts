@@ -82,15 +82,16 @@ function addLikelihood(
   }
   const kept = 1 - 2 * flipped;
   const density = kept * yes * no;
-  const saidYes = flipped + kept * yes;
-  const saidNo = flipped + kept * no;
-  const slopeYes = density / saidYes;
-  const slopeNo = -density / saidNo;
   const bend = density * (no - yes);
-  into.value += share * (outcome * Math.log(saidYes) + (1 - outcome) * Math.log(saidNo));
-  into.slope += share * (outcome * slopeYes + (1 - outcome) * slopeNo);
-  into.curvature +=
-    share *
-    (outcome * (slopeYes * slopeYes - bend / saidYes) +
-      (1 - outcome) * (slopeNo * slopeNo + bend / saidNo));
+  // Nearly all outcomes are whole: one side of the logarithms and quotients is then enough.
+  if (outcome > 0) addSide(flipped + kept * yes, density, bend, share * outcome, into);
+  if (outcome < 1) addSide(flipped + kept * no, -density, -bend, share * (1 - outcome), into);
+}
+
+/** Adds what is said by a verdict of probability `said`, which changes by `slope` and `bend`. */
+function addSide(said: number, slope: number, bend: number, share: number, into: Expected): void {
+  const relative = slope / said;
+  into.value += share * Math.log(said);
+  into.slope += share * relative;
+  into.curvature += share * (relative * relative - bend / said);
 }

@@ -115,9 +115,9 @@ function logOddsAt(
  */
 export function blockLogOdds(block: Block, first: number, unknowns: Unknowns): Float64Array {
   const weights = scaledWeights(block, first, unknowns.theta);
-  return Float64Array.from({ length: block.count }, (_, i) =>
-    logOddsAt(block, weights, unknowns.loads, i),
-  );
+  const logOdds = new Float64Array(block.count);
+  for (let i = 0; i < block.count; i++) logOdds[i] = logOddsAt(block, weights, unknowns.loads, i);
+  return logOdds;
 }
 
 /**
@@ -271,7 +271,8 @@ function addRow(
   { gradient: { length: width }, loadGradient, loadPrecision, coupling }: Sums,
 ): void {
   const l = load[i]!;
-  const [one, two] = [effects[2 * i]!, effects[2 * i + 1]!];
+  const one = effects[2 * i]!;
+  const two = effects[2 * i + 1]!;
   loadGradient[2 * l]! += slope * one;
   loadGradient[2 * l + 1]! += slope * two;
   loadPrecision[3 * l]! += curvature * one * one;
@@ -284,6 +285,8 @@ function addRow(
     const x = rows[base + j]!;
     gradient[j]! += slope * x;
     coupling[toOne + j]! += curvature * x * one;
-    coupling[toTwo + j]! += curvature * x * two;
   }
+  // Melting does not ask for a load's intercept of gloss.
+  if (two === 0) return;
+  for (let j = 0; j < size; j++) coupling[toTwo + j]! += curvature * rows[base + j]! * two;
 }

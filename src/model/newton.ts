@@ -150,7 +150,9 @@ function solvedStep(system: NewtonSystem): NewtonStep | undefined {
 }
 
 function largest(values: Float64Array): number {
-  return values.reduce((most, value) => Math.max(most, Math.abs(value)), 0);
+  let most = 0;
+  for (const value of values) most = Math.max(most, Math.abs(value));
+  return most;
 }
 
 function positiveFactor(matrix: Float64Array, size: number): Float64Array | undefined {
@@ -165,7 +167,9 @@ function positiveFactor(matrix: Float64Array, size: number): Float64Array | unde
 function inverseBlocks(blocks: Float64Array): Float64Array | undefined {
   const inverse = new Float64Array(blocks.length);
   for (let at = 0; at < blocks.length; at += 3) {
-    const [a, b, c] = [blocks[at]!, blocks[at + 1]!, blocks[at + 2]!];
+    const a = blocks[at]!;
+    const b = blocks[at + 1]!;
+    const c = blocks[at + 2]!;
     const determinant = a * c - b * b;
     if (!(a > 0 && determinant > 0)) return undefined;
     inverse[at] = c / determinant;
@@ -182,9 +186,12 @@ function pulledCoupling(
 ): Float64Array {
   const pulled = new Float64Array(coupling.length);
   for (let at = 0, block = 0; at < coupling.length; at += LOAD_UNKNOWNS * width, block += 3) {
-    const [a, b, c] = [inverse[block]!, inverse[block + 1]!, inverse[block + 2]!];
+    const a = inverse[block]!;
+    const b = inverse[block + 1]!;
+    const c = inverse[block + 2]!;
     for (let j = at; j < at + width; j++) {
-      const [one, two] = [coupling[j]!, coupling[j + width]!];
+      const one = coupling[j]!;
+      const two = coupling[j + width]!;
       pulled[j] = a * one + b * two;
       pulled[j + width] = b * one + c * two;
     }
@@ -211,11 +218,13 @@ function loadSteps(
   theta: Float64Array,
 ): Float64Array {
   const width = theta.length;
-  return loadGradient.map((_, row) => {
+  const steps = new Float64Array(loadGradient.length);
+  for (let row = 0, from = 0; row < steps.length; row++) {
     const l = row >> 1;
-    const [one, two] = [loadGradient[2 * l]!, loadGradient[2 * l + 1]!];
     const at = 3 * l + (row % 2);
-    const own = inverse[at]! * one + inverse[at + 1]! * two;
-    return own - dot(pulled.subarray(row * width, (row + 1) * width), theta);
-  });
+    let step = inverse[at]! * loadGradient[2 * l]! + inverse[at + 1]! * loadGradient[2 * l + 1]!;
+    for (let j = 0; j < width; j++) step -= pulled[from++]! * theta[j]!;
+    steps[row] = step;
+  }
+  return steps;
 }

@@ -31,19 +31,16 @@ export function lowerIndex(row: number, column: number): number {
 export function choleskyFactor(matrix: LowerTriangle, size: number): LowerTriangle {
   const factor = new Float64Array(matrix.length);
   for (let i = 0; i < size; i++) {
-    const rowI = lowerIndex(i, 0);
-    for (let j = 0; j <= i; j++) {
-      const rowJ = lowerIndex(j, 0);
-      let sum = matrix[rowI + j]!;
-      for (let k = 0; k < j; k++) sum -= factor[rowI + k]! * factor[rowJ + k]!;
-      if (j < i) {
-        factor[rowI + j] = sum / factor[rowJ + j]!;
-      } else if (sum > 0 && sum < Infinity) {
-        factor[rowI + i] = Math.sqrt(sum);
-      } else {
-        throw new RangeError(`matrix must be positive definite, pivot ${i} is ${sum}`);
-      }
+    const row = lowerIndex(i, 0);
+    const own = factor.subarray(row, row + i);
+    own.set(matrix.subarray(row, row + i));
+    solveLowerInPlace(factor, own);
+    let pivot = matrix[row + i]!;
+    for (const value of own) pivot -= value * value;
+    if (!(pivot > 0 && pivot < Infinity)) {
+      throw new RangeError(`matrix must be positive definite, pivot ${i} is ${pivot}`);
     }
+    factor[row + i] = Math.sqrt(pivot);
   }
   return factor;
 }
