@@ -177,12 +177,14 @@ function sumOfSquares(values: Float64Array): number {
  * @param problem - the questions
  * @param unknowns - where
  * @param isExact - keep that curvature; the negative Hessian may then not be positive definite
+ * @param spare - an array of the coupling's length to write it to
  * @returns all of them
  */
 export function newtonSystem(
   problem: LatentProblem,
   unknowns: Unknowns,
   isExact = false,
+  spare?: Float64Array,
 ): NewtonSystem {
   const width = weightCount(problem);
   const { loadCount } = problem;
@@ -196,7 +198,7 @@ export function newtonSystem(
     loadGradient: unknowns.loads.map((u) => -u),
     precision,
     loadPrecision,
-    coupling: new Float64Array(LOAD_UNKNOWNS * loadCount * width),
+    coupling: emptied(LOAD_UNKNOWNS * loadCount * width, spare),
   };
   let first = 0;
   problem.blocks.forEach((block, b) => {
@@ -206,6 +208,10 @@ export function newtonSystem(
   const { likelihood, ...rest } = sums;
   const squares = sumOfSquares(unknowns.theta) + sumOfSquares(unknowns.loads);
   return { logDensity: likelihood - 0.5 * squares, ...rest };
+}
+
+function emptied(length: number, spare?: Float64Array): Float64Array {
+  return spare?.length === length ? spare.fill(0) : new Float64Array(length);
 }
 
 interface Sums extends Omit<NewtonSystem, 'logDensity'> {

@@ -76,7 +76,7 @@ function hasDoubts({ blocks }: LatentProblem): boolean {
  */
 export function exactStep(problem: LatentProblem, unknowns: Unknowns): NewtonStep {
   if (!hasDoubts(problem)) return newtonStep(problem, unknowns);
-  const exact = solvedStep(newtonSystem(problem, unknowns, true));
+  const exact = stepAt(problem, unknowns, true);
   return exact ?? newtonStep(problem, unknowns);
 }
 
@@ -115,12 +115,25 @@ export function backtracked(
  * @returns step and curvature
  */
 export function newtonStep(problem: LatentProblem, unknowns: Unknowns): NewtonStep {
-  const step = solvedStep(newtonSystem(problem, unknowns));
+  const step = stepAt(problem, unknowns, false);
   if (step === undefined) throw new RangeError('log density must be finite at every point tried');
   return step;
 }
 
-/** Undefined where the matrix is not positive definite. */
+/** The largest array of a step: with thousands of loads a new one each time would keep the collector busy. */
+let spareCoupling: Float64Array | undefined;
+
+function stepAt(
+  problem: LatentProblem,
+  unknowns: Unknowns,
+  isExact: boolean,
+): NewtonStep | undefined {
+  const system = newtonSystem(problem, unknowns, isExact, spareCoupling);
+  spareCoupling = system.coupling;
+  return solvedStep(system);
+}
+
+/** Undefined where the matrix is not positive definite. Nothing of the system's coupling is kept. */
 function solvedStep(system: NewtonSystem): NewtonStep | undefined {
   const { gradient, loadGradient, precision, coupling } = system;
   const width = gradient.length;

@@ -5,12 +5,12 @@ export const TILE = 4;
 const BYTES = 8;
 
 /** What the loop is given, then what it works with. */
-const [LEFT, RIGHT, SUMS, COUNT, LEFT_STRIDE, RIGHT_STRIDE, SUMS_STRIDE] = [
+const [LEFT, RIGHT, SUMS, TERMS, LEFT_STRIDE, RIGHT_STRIDE, SUMS_STRIDE] = [
   0, 1, 2, 3, 4, 5, 6,
 ] as const;
-const [ROWS, COLUMNS, SLOPE] = [7, 8, 9] as const;
-const PARAMETERS = 10;
-const [ROW, COLUMN, FROM_LEFT, FROM_RIGHT, END, CELL] = [10, 11, 12, 13, 14, 15] as const;
+const [ROWS, COLUMNS, COLUMNS_SLOPE, TERMS_SLOPE] = [7, 8, 9, 10] as const;
+const PARAMETERS = 11;
+const [ROW, COLUMN, FROM_LEFT, FROM_RIGHT, END, CELL] = [11, 12, 13, 14, 15, 16] as const;
 const WHOLE_LOCALS = 6;
 const FIRST_SUM = PARAMETERS + WHOLE_LOCALS;
 const SUM_PAIRS = (TILE * TILE) / 2;
@@ -49,17 +49,18 @@ const eachSum = (act: (sum: number, offset: number) => Code): Code => [
   ]),
 ];
 
+const termsOfTile: Code = add(get(TERMS), multiply(get(TERMS_SLOPE), get(COLUMN)));
 const oneTile: Code = [
   ...set(FROM_LEFT, add(get(LEFT), inBytes(get(ROW)))),
   ...set(FROM_RIGHT, add(get(RIGHT), inBytes(get(COLUMN)))),
-  ...set(END, add(get(FROM_LEFT), multiply(get(COUNT), get(LEFT_STRIDE)))),
+  ...set(END, add(get(FROM_LEFT), multiply(termsOfTile, get(LEFT_STRIDE)))),
   ...eachSum((sum, offset) => set(sum, op.loadPair(get(CELL), offset))),
   ...op.repeat(oneTerm, op.isBelow(get(FROM_LEFT), get(END))),
   ...eachSum((sum, offset) => op.storePair(get(CELL), offset, get(sum))),
   ...step(COLUMN, constant(TILE)),
 ];
 
-const columnsEnd: Code = add(get(COLUMNS), multiply(get(SLOPE), get(ROW)));
+const columnsEnd: Code = add(get(COLUMNS), multiply(get(COLUMNS_SLOPE), get(ROW)));
 const tilesOfRow: Code = [
   ...set(COLUMN, constant(0)),
   ...op.repeat(oneTile, op.isBelow(get(COLUMN), columnsEnd)),
@@ -69,11 +70,12 @@ const tilesOfRow: Code = [
 /**
  * The loop that adds products of columns to sums, in tiles:
  *
- *     products(left, right, sums, count, left stride, right stride, sums stride, rows, columns, slope)
- *     sums[j][k] += left[i][j] right[i][k], for each i below count in turn
+ *     products(left, right, sums, terms, left stride, right stride, sums stride,
+ *              rows, columns, columns' slope, terms' slope)
+ *     sums[j][k] += left[i][j] right[i][k], for each i below terms + terms' slope K in turn
  *
- * for all tiles that begin at j below rows and k below columns + slope j. Addresses and strides are in bytes;
- * count, rows and columns at least 1. Tiles that stand out over the edge read and write what is there.
+ * for all tiles (J, K) that begin at J below rows and K below columns + columns' slope J. Addresses and strides are
+ * in bytes; terms, rows and columns at least 1. Tiles that stand out over the edge read and write what is there.
  *
  * @param pages - memory to begin with, in 64 KiB
  * @returns a module in binary form

@@ -84,7 +84,7 @@ function addByLoop(
     const chunk = rows.subarray(first * size, (first + here) * size);
     numbers.set(chunk, right.at);
     fillLeft(chunk, first, numbers);
-    loop.run(left, right, sums, here, { rows: size, columns: size, isLower: true });
+    loop.run(left, right, sums, { terms: here, rows: size, columns: size, sparse: 'sums' });
   }
   for (let j = 0, cell = 0; j < size; j++) {
     for (let k = 0; k <= j; k++) products[cell++]! += numbers[sums.at + j * padded + k]!;

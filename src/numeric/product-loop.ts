@@ -45,27 +45,21 @@ export class ProductLoop {
    * @param left - where the left columns stand, and the stride of their rows
    * @param right - the same of the right ones
    * @param sums - the same of the sums
-   * @param count - terms of each sum
-   * @param size - rows and columns of the sums; `isLower` leaves out the tiles above the diagonal
+   * @param shape - terms of each sum, rows and columns of the sums
    */
-  run(
-    left: Place,
-    right: Place,
-    sums: Place,
-    count: number,
-    size: { readonly rows: number; readonly columns: number; readonly isLower?: boolean },
-  ): void {
+  run(left: Place, right: Place, sums: Place, { terms, rows, columns, sparse }: Shape): void {
     this.#exports['products']!(
       BYTES * left.at,
       BYTES * right.at,
       BYTES * sums.at,
-      count,
+      sparse === 'terms' ? TILE : terms,
       BYTES * left.stride,
       BYTES * right.stride,
       BYTES * sums.stride,
-      size.rows,
-      size.isLower ? 1 : size.columns,
-      size.isLower ? 1 : 0,
+      rows,
+      sparse === 'sums' ? 1 : columns,
+      sparse === 'sums' ? 1 : 0,
+      sparse === 'terms' ? 1 : 0,
     );
   }
 }
@@ -74,6 +68,18 @@ export class ProductLoop {
 export interface Place {
   readonly at: number;
   readonly stride: number;
+}
+
+/** How much there is to do. */
+interface Shape {
+  readonly terms: number;
+  readonly rows: number;
+  readonly columns: number;
+  /**
+   * `sums`: the tiles above the diagonal are left out. `terms`: the right matrix is 0 below its diagonal, and its terms there
+   * are left out; both matrices are then read, and must hold zeros, up to a whole tile of terms.
+   */
+  readonly sparse?: 'sums' | 'terms';
 }
 
 let made: { readonly loop: ProductLoop | undefined } | undefined;

@@ -4,8 +4,15 @@ import { inTiles, productLoop, type ProductLoop } from './product-loop.ts';
 /** So many rows at a time stay in the processor's nearest memory. */
 const ROWS_AT_ONCE = 32;
 
-/** What is done with some rows and their images, both [rows][size] with strides. */
+/** Is given each row's image, from `at` on. */
 type Take = (image: Float64Array, at: number, row: number) => void;
+
+/** A matrix by its elements (term k, column j); `isUpper` if it is 0 for k > j. */
+interface Matrix {
+  readonly size: number;
+  readonly at: (k: number, j: number) => number;
+  readonly isUpper: boolean;
+}
 
 /**
  * x' A x for many x and one symmetric A: the variances of weighted sums.
@@ -23,10 +30,16 @@ export function quadraticForms(
   lower: Float64Array,
 ): Float64Array {
   const forms = new Float64Array(size === 0 ? 0 : rows.length / size);
-  eachImage(rows, size, lower, (images, at, i) => {
+  // Twice the sum over the lower triangle with half its diagonal.
+  const half: Matrix = {
+    size,
+    at: (k, j) => (k > j ? 0 : lower[lowerIndex(j, k)]! * (k === j ? 0.5 : 1)),
+    isUpper: true,
+  };
+  eachImage(rows, half, (images, at, i) => {
     let sum = 0;
     for (let j = 0, base = i * size; j < size; j++) sum += images[at + j]! * rows[base + j]!;
-    forms[i] = sum;
+    forms[i] = 2 * sum;
   });
   return forms;
 }
@@ -47,33 +60,32 @@ export function symmetricImages(
   lower: Float64Array,
 ): Float64Array {
   const all = new Float64Array(rows.length);
-  eachImage(rows, size, lower, (images, at, i) => {
-    for (let j = 0, base = i * size; j < size; j++) all[base + j] = images[at + j]!;
+  const at = (k: number, j: number) => lower[k > j ? lowerIndex(k, j) : lowerIndex(j, k)]!;
+  eachImage(rows, { size, at, isUpper: false }, (images, from, i) => {
+    for (let j = 0, base = i * size; j < size; j++) all[base + j] = images[from + j]!;
   });
   return all;
 }
 
 /** Each sum takes its terms in the order of the columns, here and in the plain loop. */
-function eachImage(rows: Float64Array, size: number, lower: Float64Array, take: Take): void {
-  if (size === 0) return;
+function eachImage(rows: Float64Array, matrix: Matrix, take: Take): void {
+  if (matrix.size === 0 || rows.length === 0) return;
   const loop = productLoop();
-  if (loop === undefined) eachPlainImage(rows, size, lower, take);
-  else eachLoopImage(loop, rows, size, lower, take);
+  if (loop === undefined) eachPlainImage(rows, matrix, take);
+  else eachLoopImage(loop, rows, matrix, take);
 }
 
-function eachLoopImage(
-  loop: ProductLoop,
-  rows: Float64Array,
-  size: number,
-  lower: Float64Array,
-  take: Take,
-): void {
+function eachLoopImage(loop: ProductLoop, rows: Float64Array, given: Matrix, take: Take): void {
+  const { size, isUpper } = given;
   const padded = inTiles(size);
   const matrix = { at: 0, stride: padded };
-  const turned = { at: size * padded, stride: ROWS_AT_ONCE };
-  const images = { at: turned.at + size * ROWS_AT_ONCE, stride: padded };
+  const turned = { at: padded * padded, stride: ROWS_AT_ONCE };
+  const images = { at: turned.at + padded * ROWS_AT_ONCE, stride: padded };
   const numbers = loop.numbers(images.at + ROWS_AT_ONCE * padded);
-  fillSquare(numbers, size, padded, lower);
+  numbers.fill(0, 0, images.at);
+  for (let k = 0; k < size; k++) {
+    for (let j = 0; j < size; j++) numbers[k * padded + j] = given.at(k, j);
+  }
   const count = rows.length / size;
   for (let first = 0; first < count; first += ROWS_AT_ONCE) {
     const here = Math.min(ROWS_AT_ONCE, count - first);
@@ -83,22 +95,9 @@ function eachLoopImage(
       }
     }
     numbers.fill(0, images.at, images.at + here * padded);
-    loop.run(turned, matrix, images, size, { rows: here, columns: size });
+    const shape = { terms: size, rows: here, columns: size };
+    loop.run(turned, matrix, images, isUpper ? { ...shape, sparse: 'terms' } : shape);
     for (let i = 0; i < here; i++) take(numbers, images.at + i * padded, first + i);
-  }
-}
-
-function fillSquare(
-  numbers: Float64Array,
-  size: number,
-  padded: number,
-  lower: Float64Array,
-): void {
-  for (let i = 0, cell = 0; i < size; i++) {
-    for (let j = 0; j <= i; j++, cell++) {
-      numbers[i * padded + j] = lower[cell]!;
-      numbers[j * padded + i] = lower[cell]!;
-    }
   }
 }
 
@@ -106,24 +105,15 @@ function fillSquare(
  * The same without WebAssembly, for engines that have none.
  *
  * @param rows - [rows][size]
- * @param size - columns
- * @param lower - lower triangle of A
+ * @param matrix - what they are multiplied by
  * @param take - is given the image of each row
  */
-export function eachPlainImage(
-  rows: Float64Array,
-  size: number,
-  lower: Float64Array,
-  take: Take,
-): void {
+export function eachPlainImage(rows: Float64Array, { size, at }: Matrix, take: Take): void {
   const image = new Float64Array(size);
   for (let i = 0, base = 0; base < rows.length; i++, base += size) {
     for (let j = 0; j < size; j++) {
       let sum = 0;
-      for (let k = 0; k < size; k++) {
-        const cell = k <= j ? lowerIndex(j, k) : lowerIndex(k, j);
-        sum += rows[base + k]! * lower[cell]!;
-      }
+      for (let k = 0; k < size; k++) sum += rows[base + k]! * at(k, j);
       image[j] = sum;
     }
     take(image, 0, i);
