@@ -1,4 +1,4 @@
-import type { z } from 'zod';
+import type * as z from 'zod';
 import { recipeUnity } from '../chemistry/recipe.ts';
 import type { Fault } from '../errors.ts';
 import type { Body, Firing, Material, Recipe, WitnessReading } from './archive.ts';

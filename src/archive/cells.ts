@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from 'zod';
 import { coneIndex, coneText } from '../firing/cone.ts';
 import { ConeError } from '../errors.ts';
 import { expectedNumber, parseDecimal, type DecimalMark } from './decimal-mark.ts';

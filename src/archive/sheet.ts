@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from 'zod';
 import type { Fault } from '../errors.ts';
 import { headlessCells, readTable, type Table, type TableRow } from './csv-table.ts';
 import { decimalMark, type DecimalMark } from './decimal-mark.ts';

@@ -24,7 +24,8 @@ export async function reportError(error: unknown, io: Io): Promise<number> {
     io,
   );
   // A stack is for who mends it: its lines stay as they are.
-  io.err(`${safeLines(told)}\n`);
+  const { mappedStack } = await import('./mapped-stack.ts');
+  io.err(`${safeLines(mappedStack(told))}\n`);
   return BUG;
 }
 

@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import * as z from 'zod';
 import { OXIDES, isOxide, type Oxide } from '../chemistry/oxides.ts';
 import { coneIndex } from '../firing/cone.ts';
 

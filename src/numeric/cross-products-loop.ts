@@ -26,45 +26,45 @@ const tileRows = Array.from({ length: TILE }, (_, r) => r);
 
 /** One term of each sum of a tile. */
 const oneTerm: Code = [
-  ...set(FIRST, op.loadPair(get(FROM_RIGHT), 0)),
-  ...set(SECOND, op.loadPair(get(FROM_RIGHT), 2 * BYTES)),
-  ...tileRows.flatMap((r) => [
-    ...set(FACTOR, op.loadTwice(get(FROM_LEFT), BYTES * r)),
-    ...[FIRST, SECOND].flatMap((pair, side) => {
+  set(FIRST, op.loadPair(get(FROM_RIGHT), 0)),
+  set(SECOND, op.loadPair(get(FROM_RIGHT), 2 * BYTES)),
+  tileRows.map((r) => [
+    set(FACTOR, op.loadTwice(get(FROM_LEFT), BYTES * r)),
+    [FIRST, SECOND].map((pair, side) => {
       const sum = FIRST_SUM + 2 * r + side;
       return set(sum, op.addPairs(get(sum), op.multiplyPairs(get(FACTOR), get(pair))));
     }),
   ]),
-  ...step(FROM_LEFT, get(LEFT_STRIDE)),
-  ...step(FROM_RIGHT, get(RIGHT_STRIDE)),
+  step(FROM_LEFT, get(LEFT_STRIDE)),
+  step(FROM_RIGHT, get(RIGHT_STRIDE)),
 ];
 
 /** Does something with each pair of the tile's sums, at its address. */
 const eachSum = (act: (sum: number, offset: number) => Code): Code => [
-  ...set(CELL, add(get(SUMS), add(multiply(get(ROW), get(SUMS_STRIDE)), inBytes(get(COLUMN))))),
-  ...tileRows.flatMap((r) => [
-    ...act(FIRST_SUM + 2 * r, 0),
-    ...act(FIRST_SUM + 2 * r + 1, 2 * BYTES),
-    ...step(CELL, get(SUMS_STRIDE)),
+  set(CELL, add(get(SUMS), add(multiply(get(ROW), get(SUMS_STRIDE)), inBytes(get(COLUMN))))),
+  tileRows.map((r) => [
+    act(FIRST_SUM + 2 * r, 0),
+    act(FIRST_SUM + 2 * r + 1, 2 * BYTES),
+    step(CELL, get(SUMS_STRIDE)),
   ]),
 ];
 
 const termsOfTile: Code = add(get(TERMS), multiply(get(TERMS_SLOPE), get(COLUMN)));
 const oneTile: Code = [
-  ...set(FROM_LEFT, add(get(LEFT), inBytes(get(ROW)))),
-  ...set(FROM_RIGHT, add(get(RIGHT), inBytes(get(COLUMN)))),
-  ...set(END, add(get(FROM_LEFT), multiply(termsOfTile, get(LEFT_STRIDE)))),
-  ...eachSum((sum, offset) => set(sum, op.loadPair(get(CELL), offset))),
-  ...op.repeat(oneTerm, op.isBelow(get(FROM_LEFT), get(END))),
-  ...eachSum((sum, offset) => op.storePair(get(CELL), offset, get(sum))),
-  ...step(COLUMN, constant(TILE)),
+  set(FROM_LEFT, add(get(LEFT), inBytes(get(ROW)))),
+  set(FROM_RIGHT, add(get(RIGHT), inBytes(get(COLUMN)))),
+  set(END, add(get(FROM_LEFT), multiply(termsOfTile, get(LEFT_STRIDE)))),
+  eachSum((sum, offset) => set(sum, op.loadPair(get(CELL), offset))),
+  op.repeat(oneTerm, op.isBelow(get(FROM_LEFT), get(END))),
+  eachSum((sum, offset) => op.storePair(get(CELL), offset, get(sum))),
+  step(COLUMN, constant(TILE)),
 ];
 
 const columnsEnd: Code = add(get(COLUMNS), multiply(get(COLUMNS_SLOPE), get(ROW)));
 const tilesOfRow: Code = [
-  ...set(COLUMN, constant(0)),
-  ...op.repeat(oneTile, op.isBelow(get(COLUMN), columnsEnd)),
-  ...step(ROW, constant(TILE)),
+  set(COLUMN, constant(0)),
+  op.repeat(oneTile, op.isBelow(get(COLUMN), columnsEnd)),
+  step(ROW, constant(TILE)),
 ];
 
 /**
@@ -82,8 +82,8 @@ const tilesOfRow: Code = [
  */
 export function productsModule(pages: number): Uint8Array {
   const body: Code = [
-    ...set(ROW, constant(0)),
-    ...op.repeat(tilesOfRow, op.isBelow(get(ROW), get(ROWS))),
+    set(ROW, constant(0)),
+    op.repeat(tilesOfRow, op.isBelow(get(ROW), get(ROWS))),
   ];
   const products = {
     name: 'products',

@@ -1,4 +1,3 @@
-import { lowerIndex } from './linalg.ts';
 import { inTiles, productLoop, type ProductLoop } from './product-loop.ts';
 
 /** So many rows at a time stay in the processor's nearest memory. */
@@ -7,10 +6,10 @@ const ROWS_AT_ONCE = 32;
 /** Is given each row's image, from `at` on. */
 type Take = (image: Float64Array, at: number, row: number) => void;
 
-/** A matrix by its elements (term k, column j); `isUpper` if it is 0 for k > j. */
-interface Matrix {
+/** What rows are multiplied by: [terms][columns]; `isUpper` if it is 0 below its diagonal. */
+interface Square {
   readonly size: number;
-  readonly at: (k: number, j: number) => number;
+  readonly values: Float64Array;
   readonly isUpper: boolean;
 }
 
@@ -31,11 +30,12 @@ export function quadraticForms(
 ): Float64Array {
   const forms = new Float64Array(size === 0 ? 0 : rows.length / size);
   // Twice the sum over the lower triangle with half its diagonal.
-  const half: Matrix = {
-    size,
-    at: (k, j) => (k > j ? 0 : lower[lowerIndex(j, k)]! * (k === j ? 0.5 : 1)),
-    isUpper: true,
-  };
+  const values = new Float64Array(size * size);
+  for (let j = 0, cell = 0; j < size; j++) {
+    for (let k = 0; k < j; k++) values[k * size + j] = lower[cell++]!;
+    values[j * size + j] = 0.5 * lower[cell++]!;
+  }
+  const half = { size, values, isUpper: true };
   eachImage(rows, half, (images, at, i) => {
     let sum = 0;
     for (let j = 0, base = i * size; j < size; j++) sum += images[at + j]! * rows[base + j]!;
@@ -60,22 +60,28 @@ export function symmetricImages(
   lower: Float64Array,
 ): Float64Array {
   const all = new Float64Array(rows.length);
-  const at = (k: number, j: number) => lower[k > j ? lowerIndex(k, j) : lowerIndex(j, k)]!;
-  eachImage(rows, { size, at, isUpper: false }, (images, from, i) => {
+  const values = new Float64Array(size * size);
+  for (let j = 0, cell = 0; j < size; j++) {
+    for (let k = 0; k <= j; k++, cell++) {
+      values[k * size + j] = lower[cell]!;
+      values[j * size + k] = lower[cell]!;
+    }
+  }
+  eachImage(rows, { size, values, isUpper: false }, (images, from, i) => {
     for (let j = 0, base = i * size; j < size; j++) all[base + j] = images[from + j]!;
   });
   return all;
 }
 
 /** Each sum takes its terms in the order of the columns, here and in the plain loop. */
-function eachImage(rows: Float64Array, matrix: Matrix, take: Take): void {
+function eachImage(rows: Float64Array, matrix: Square, take: Take): void {
   if (matrix.size === 0 || rows.length === 0) return;
   const loop = productLoop();
   if (loop === undefined) eachPlainImage(rows, matrix, take);
   else eachLoopImage(loop, rows, matrix, take);
 }
 
-function eachLoopImage(loop: ProductLoop, rows: Float64Array, given: Matrix, take: Take): void {
+function eachLoopImage(loop: ProductLoop, rows: Float64Array, given: Square, take: Take): void {
   const { size, isUpper } = given;
   const padded = inTiles(size);
   const matrix = { at: 0, stride: padded };
@@ -84,7 +90,7 @@ function eachLoopImage(loop: ProductLoop, rows: Float64Array, given: Matrix, tak
   const numbers = loop.numbers(images.at + ROWS_AT_ONCE * padded);
   numbers.fill(0, 0, images.at);
   for (let k = 0; k < size; k++) {
-    for (let j = 0; j < size; j++) numbers[k * padded + j] = given.at(k, j);
+    numbers.set(given.values.subarray(k * size, (k + 1) * size), k * padded);
   }
   const count = rows.length / size;
   for (let first = 0; first < count; first += ROWS_AT_ONCE) {
@@ -108,12 +114,12 @@ function eachLoopImage(loop: ProductLoop, rows: Float64Array, given: Matrix, tak
  * @param matrix - what they are multiplied by
  * @param take - is given the image of each row
  */
-export function eachPlainImage(rows: Float64Array, { size, at }: Matrix, take: Take): void {
+export function eachPlainImage(rows: Float64Array, { size, values }: Square, take: Take): void {
   const image = new Float64Array(size);
   for (let i = 0, base = 0; base < rows.length; i++, base += size) {
     for (let j = 0; j < size; j++) {
       let sum = 0;
-      for (let k = 0; k < size; k++) sum += rows[base + k]! * at(k, j);
+      for (let k = 0; k < size; k++) sum += rows[base + k]! * values[k * size + j]!;
       image[j] = sum;
     }
     take(image, 0, i);
