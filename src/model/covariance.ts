@@ -7,6 +7,7 @@ import { sdsOf } from './units.ts';
  * Adds what the sds' own uncertainty does to the weights, to first order.
  *
  * @param design - both stages
+ * @param scales - sds
  * @param theta - weights of both stages in units of the prior
  * @param covariance - their covariance at fixed sds, lower triangle
  * @returns the wider covariance
@@ -15,6 +16,7 @@ import { sdsOf } from './units.ts';
  */
 export function withScalesSpread(
   design: Design,
+  scales: Scales,
   theta: Float64Array,
   covariance: Float64Array,
 ): Float64Array {
@@ -24,6 +26,7 @@ export function withScalesSpread(
     const base = first;
     const departures = groupDepartures(stage, theta, covariance, base);
     departures.forEach(({ determined }, g) => {
+      if (g > scales[stage.name].groups.length) return;
       const members = stage.groupOf.flatMap((of, j) => (of === g ? [base + j] : []));
       addOuter(widened, movesWithSd(members, theta, covariance), determined);
     });

@@ -3,8 +3,8 @@ import { fillColumnValues, heatSlopes, scaledInputs, type Inputs } from './input
 import type { Block, LatentProblem } from './latent.ts';
 import { GLOSS_PRIOR, MELT_PRIOR, priorColumns, type StagePrior } from './priors.ts';
 import { centresAndValues, radialPlace, type Radial } from './radial.ts';
-import type { Scales } from './scales.ts';
-import type { JudgedTile } from './judged.ts';
+import { sdOfGroup, type Scales } from './scales.ts';
+import { isGlossOrMatte, type JudgedTile } from './judged.ts';
 
 /** The two questions, in the order of the blocks. */
 export const STAGES = ['melt', 'gloss'] as const;
@@ -24,9 +24,11 @@ export interface StageDesign {
   readonly size: number;
   /** Prior mean of each weight; those of the radial columns come last and are 0. */
   readonly priorMean: readonly number[];
-  /** Which sd each weight has: the group's number; radial columns come after all groups. */
+  /** Which sd each weight has: the group's number; radial columns come after all groups, firing columns last. */
   readonly groupOf: readonly number[];
   readonly radial: Radial;
+  /** So many columns at the end are of the firing, with an sd of 1 that is held. */
+  readonly firingColumns: number;
   /** [tiles][weights] */
   readonly values: Float64Array;
   /** [tiles][columns]: growth of each column per cone; the radial columns' is left out. */
@@ -45,6 +47,8 @@ export interface DesignOptions {
   readonly loadNumber: ReadonlyMap<string, number>;
   /** How often each tile counts; 1 where absent. */
   readonly weight?: ((tile: JudgedTile) => number) | undefined;
+  /** What is known of a tile's firing beside its heat, in units of the prior; as many numbers for every tile. */
+  readonly firingValues?: ((tile: JudgedTile) => readonly number[]) | undefined;
 }
 
 /** One centre for so many tiles, and no more than the time of a fit allows. */
@@ -62,7 +66,7 @@ const MOST_CENTRES = 64;
 export function stageDesign(
   name: StageName,
   tiles: readonly JudgedTile[],
-  { loadNumber, weight }: DesignOptions,
+  { loadNumber, weight, firingValues }: DesignOptions,
 ): StageDesign {
   const own = name === 'melt' ? tiles : tiles.filter(isGlossOrMatte);
   const prior = STAGE_PRIOR[name];
@@ -70,20 +74,24 @@ export function stageDesign(
   const inputs = own.map(({ unity, heat }) => scaledInputs(unity, heat.coneIndex));
   const most = Math.min(MOST_CENTRES, Math.floor(own.length / TILES_PER_CENTRE));
   const { radial, values: radialPart } = centresAndValues(inputs.map(radialPlace), most);
+  const firingPart = name === 'gloss' && firingValues ? own.map(firingValues) : [];
+  const firingColumns = (firingPart[0] ?? []).map(() => 0);
   const priorMean = prior.groups.flatMap(({ means }) => Object.values(means));
   const radialColumns = radial.centres.map(() => 0);
   return {
     name,
     tiles: own,
     count: own.length,
-    size: columns.length + radialColumns.length,
-    priorMean: [...priorMean, ...radialColumns],
+    size: columns.length + radialColumns.length + firingColumns.length,
+    priorMean: [...priorMean, ...radialColumns, ...firingColumns],
     groupOf: [
       ...prior.groups.flatMap(({ means }, g) => Object.keys(means).map(() => g)),
       ...radialColumns.map(() => prior.groups.length),
+      ...firingColumns.map(() => prior.groups.length + 1),
     ],
     radial,
-    ...designNumbers(inputs, columns, priorMean, radialPart),
+    firingColumns: firingColumns.length,
+    ...designNumbers(inputs, columns, priorMean, radialPart, firingPart),
     columnCount: columns.length,
     outcome: Float64Array.from(own, (tile) => (isYes(name, tile) ? 1 : 0)),
     weight: Float64Array.from(own, weight ?? (() => 1)),
@@ -98,9 +106,10 @@ function designNumbers(
   columns: readonly string[],
   priorMean: readonly number[],
   radialPart: Float64Array,
+  firingPart: readonly (readonly number[])[],
 ): Pick<StageDesign, 'values' | 'slopes' | 'priorLogOdds'> {
   const centres = inputs.length === 0 ? 0 : radialPart.length / inputs.length;
-  const size = columns.length + centres;
+  const size = columns.length + centres + (firingPart[0] ?? []).length;
   const values = new Float64Array(inputs.length * size);
   const slopes = new Float64Array(inputs.length * columns.length);
   const priorLogOdds = new Float64Array(inputs.length);
@@ -109,14 +118,11 @@ function designNumbers(
     fillColumnValues(own, columns, row);
     values.set(row, i * size);
     values.set(radialPart.subarray(i * centres, (i + 1) * centres), i * size + columns.length);
+    values.set(firingPart[i] ?? [], i * size + columns.length + centres);
     slopes.set(heatSlopes(own, columns), i * columns.length);
     priorLogOdds[i] = dot(priorMean, row);
   });
   return { values, slopes, priorLogOdds };
-}
-
-function isGlossOrMatte({ verdict }: JudgedTile): boolean {
-  return verdict === 'matte' || verdict === 'gloss';
 }
 
 function isYes(name: StageName, { verdict }: JudgedTile): boolean {
@@ -209,7 +215,7 @@ function blockAt(
     count,
     size,
     rows: values,
-    scale: Float64Array.from(groupOf, (g) => own.groups[g] ?? own.residual),
+    scale: Float64Array.from(groupOf, (g) => sdOfGroup(own, g)),
     offset: priorLogOdds,
     outcome,
     weight,

@@ -156,7 +156,7 @@ function averagedFit(
   const { theta } = centre.unknowns;
   const none = new Float64Array(loadVariance.length);
   const more = isHeld ? none : spreadOfOffsets(centre.unknowns.loads, loadVariance);
-  const widened = isHeld ? covariance : withScalesSpread(design, theta, covariance);
+  const widened = isHeld ? covariance : withScalesSpread(design, scales, theta, covariance);
   return {
     scales,
     weights: weightsAt(design, scales, theta),

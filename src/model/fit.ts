@@ -1,16 +1,10 @@
 import type { Archive } from '../archive/archive.ts';
 import { coneText } from '../firing/cone.ts';
+import { firingColumns, firingEffects, firingValues, type FiringColumn } from './firing-columns.ts';
 import { foldsByCone } from './folds.ts';
 import type { HeatCheck } from './heat-check.ts';
-import type { Model, Validation } from './model.ts';
-import {
-  fitStages,
-  fittedStages,
-  isJudged,
-  type JudgedTile,
-  type RisingFit,
-  type StagesFit,
-} from './stages.ts';
+import type { FiringEffect, Model, Validation } from './model.ts';
+import { fitStages, fittedStages, isJudged, type JudgedTile, type RisingFit } from './stages.ts';
 import { validation } from './validation.ts';
 
 export interface FitOptions {
@@ -37,13 +31,17 @@ const MAIN_CONES = [5, 6, 7];
  */
 export function fitModel(archive: Archive, options: FitOptions = {}): Model {
   const tiles = archive.tiles.filter(isJudged);
-  const fit = fitStages(tiles);
+  const fit = fitOf(archive, tiles);
   const account = validation(tiles, fit);
   const model = modelOf(archive, fit, options);
   return {
     ...model,
     validation: account,
-    notes: [...heatNotes(fit), ...fitNotes(tiles, account)],
+    notes: [
+      ...heatNotes(fit),
+      ...firingNotes(model.firingEffects ?? []),
+      ...fitNotes(tiles, account),
+    ],
   };
 }
 
@@ -58,12 +56,21 @@ export type UnvalidatedModel = Omit<Model, 'validation' | 'notes'>;
  * @returns the same weights as `fitModel`
  */
 export function fitUnvalidated(archive: Archive, options: FitOptions = {}): UnvalidatedModel {
-  return modelOf(archive, fitStages(archive.tiles.filter(isJudged)), options);
+  return modelOf(archive, fitOf(archive, archive.tiles.filter(isJudged)), options);
+}
+
+/** A fit, and the columns of the firings that it was made with. */
+type FiringsFit = RisingFit & { readonly columns: readonly FiringColumn[] };
+
+function fitOf({ firings }: Archive, tiles: readonly JudgedTile[]): FiringsFit {
+  const columns = firingColumns(tiles, firings);
+  const settings = columns.length === 0 ? {} : { firingValues: firingValues(columns, firings) };
+  return { ...fitStages(tiles, settings), columns };
 }
 
 function modelOf(
   archive: Archive,
-  fit: StagesFit,
+  fit: FiringsFit,
   { madeBy = 'coneshift' }: FitOptions,
 ): UnvalidatedModel {
   const loads = archive.tiles.flatMap(({ firing, load }) => (firing === undefined ? [] : [load]));
@@ -73,6 +80,7 @@ function modelOf(
     madeBy,
     archive,
     ...fittedStages(fit, named),
+    ...(fit.columns.length > 0 && { firingEffects: firingEffects(fit.columns, fit) }),
   };
 }
 
@@ -90,6 +98,17 @@ function heatNotes({ heatBefore, heatAfter }: RisingFit): string[] {
   return [
     `by the tiles alone the chance to melt would fall with more heat ${said(heatBefore)}; it is held not to: ${advice}`,
   ];
+}
+
+function firingNotes(effects: readonly FiringEffect[]): string[] {
+  return effects.flatMap(({ column, known, unknown }) =>
+    unknown === 0
+      ? []
+      : [
+          `${column} is recorded for ${known} of ${known + unknown} matte and gloss tiles; the others count as ` +
+            'usual: write it into firings.csv where it is known',
+        ],
+  );
 }
 
 function fitNotes(tiles: readonly JudgedTile[], { byCone, notes }: Validation): string[] {

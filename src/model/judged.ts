@@ -10,6 +10,16 @@ export interface JudgedTile extends Tile {
 }
 
 /**
+ * Whether a tile says something of gloss.
+ *
+ * @param tile - judged tile
+ * @returns true if it is matte or gloss
+ */
+export function isGlossOrMatte({ verdict }: JudgedTile): boolean {
+  return verdict === 'matte' || verdict === 'gloss';
+}
+
+/**
  * Whether the fit uses a tile: judged, not overfired, its heat known.
  *
  * @param tile - a tile of an archive

@@ -142,6 +142,23 @@ const archive = z.strictObject({
 
 const meanAndSd = z.strictObject({ mean: number, sd: positive });
 
+const firingEffect = z.discriminatedUnion('column', [
+  z.strictObject({
+    column: z.literal('cooling'),
+    usualCPerH: positive,
+    gloss: meanAndSd,
+    known: count,
+    unknown: count,
+  }),
+  z.strictObject({
+    column: z.literal('atmosphere'),
+    usual: z.enum(['oxidation', 'reduction']),
+    gloss: meanAndSd,
+    known: count,
+    unknown: count,
+  }),
+]);
+
 const stage = z.strictObject({
   columns: z.array(text),
   radial: z.strictObject({ centres: z.array(z.array(number)), factorLower: z.array(number) }),
@@ -186,6 +203,7 @@ export const modelShape = z.strictObject({
   loads: z.array(
     z.strictObject({ load: text, tiles: count, offsetCones: meanAndSd, glossLogOdds: meanAndSd }),
   ),
+  firingEffects: z.array(firingEffect).exactOptional(),
   logEvidence: number,
   validation: z.strictObject({
     byCone: heldOut,

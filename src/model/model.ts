@@ -27,7 +27,7 @@ export interface LoadEffect {
   readonly tiles: number;
   /** Heat of the load less its cone on paper, in cones. */
   readonly offsetCones: MeanAndSd;
-  /** What its cooling and atmosphere did to gloss, log-odds. */
+  /** What its cooling and atmosphere did to gloss beyond `firingEffects`, log-odds. */
   readonly glossLogOdds: MeanAndSd;
 }
 
@@ -37,6 +37,27 @@ export interface LoadSpread {
   readonly offsetScaleCones: number;
   /** Sd of a load's own intercept of gloss, log-odds. */
   readonly glossSd: number;
+}
+
+/** What cooling or atmosphere does to the log-odds of gloss; answers are for the usual one. */
+export type FiringEffect = CoolingEffect | AtmosphereEffect;
+
+interface FiringEffectKnown {
+  /** Of cooling twice as fast, or of the other atmosphere. */
+  readonly gloss: MeanAndSd;
+  /** Matte and gloss tiles of which it is recorded, and of which it is not: these count as usual. */
+  readonly known: number;
+  readonly unknown: number;
+}
+
+export interface CoolingEffect extends FiringEffectKnown {
+  readonly column: 'cooling';
+  readonly usualCPerH: number;
+}
+
+export interface AtmosphereEffect extends FiringEffectKnown {
+  readonly column: 'atmosphere';
+  readonly usual: 'oxidation' | 'reduction';
 }
 
 /** One fitted stage: a Gaussian posterior over the weights of its columns. */
@@ -107,6 +128,8 @@ export interface Model {
   readonly loadSpread: LoadSpread;
   /** The named loads. */
   readonly loads: readonly LoadEffect[];
+  /** Absent where no firing records them, or all record the same. */
+  readonly firingEffects?: readonly FiringEffect[];
   /** Laplace estimate of the log evidence at the re-estimated sds. */
   readonly logEvidence: number;
   readonly validation: Validation;

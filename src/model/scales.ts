@@ -24,6 +24,18 @@ export interface Scales {
   };
 }
 
+/**
+ * Sd of the weights of a group.
+ *
+ * @param scales - of the stage
+ * @param group - its number; after the groups come the smooth departure and what is held at 1
+ * @returns sd
+ */
+export function sdOfGroup({ groups, residual }: StageScales, group: number): number {
+  if (group > groups.length) return 1;
+  return groups[group] ?? residual;
+}
+
 /** What each starting sd weighs against the tiles: as many weights seen at exactly that size. */
 export const PSEUDO_OBSERVATIONS = 4;
 

@@ -1,3 +1,4 @@
+import { lowerIndex } from '../numeric/linalg.ts';
 import { keptRows, STAGE_PRIOR, STAGES, stageDesign, type Design } from './design.ts';
 import { evidenceFit, type EvidenceFit, type EvidenceStart } from './evidence.ts';
 import type { JudgedTile } from './judged.ts';
@@ -25,6 +26,8 @@ export interface FitSettings {
   readonly heldScales?: Scales;
   /** How often each tile counts; 1 where absent. */
   readonly weight?: (tile: JudgedTile) => number;
+  /** What is known of a tile's firing beside its heat: see `firingValues`. */
+  readonly firingValues?: ((tile: JudgedTile) => readonly number[]) | undefined;
 }
 
 /**
@@ -36,12 +39,12 @@ export interface FitSettings {
  */
 export function fitStages(
   tiles: readonly JudgedTile[],
-  { heldScales, weight }: FitSettings = {},
+  { heldScales, ...settings }: FitSettings = {},
 ): RisingFit {
   // One order for any order of rows: the sums, and so the bytes of the answer, stay the same.
   const sorted = [...tiles].sort((a, b) => (a.tile < b.tile ? -1 : 1));
   const { loads, loadNumber } = numberedLoads(sorted);
-  const stages = STAGES.map((name) => stageDesign(name, sorted, { loadNumber, weight }));
+  const stages = STAGES.map((name) => stageDesign(name, sorted, { loadNumber, ...settings }));
   const design = { stages, loadCount: loads.length };
   const start = heldScales ? { scales: heldScales } : thinnedStart(design);
   const isHeld = heldScales !== undefined;
@@ -180,15 +183,17 @@ export function fittedStages(fit: StagesFit, namedLoads: ReadonlySet<string>): F
 }
 
 function stageOf({ fit, design }: StagesFit, s: number): Stage {
-  const { name, tiles, outcome, radial } = design.stages[s]!;
+  const { name, tiles, outcome, radial, size, firingColumns } = design.stages[s]!;
+  // Answers are for the usual firing, where those columns are 0.
+  const asked = size - firingColumns;
   const prior = STAGE_PRIOR[name];
   const scales = fit.scales[name];
   const yes = tiles.reduce((sum, _, i) => sum + outcome[i]!, 0);
   return {
     columns: priorColumns(prior),
     radial,
-    mean: Array.from(fit.weights[s]!),
-    covarianceLower: Array.from(fit.covariances[s]!),
+    mean: Array.from(fit.weights[s]!.subarray(0, asked)),
+    covarianceLower: Array.from(fit.covariances[s]!.subarray(0, lowerIndex(asked, 0))),
     groups: prior.groups.map((group, g) => ({
       name: group.name,
       columns: groupColumns(group),

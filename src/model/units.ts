@@ -1,6 +1,6 @@
 import type { Design, StageDesign } from './design.ts';
 import type { Unknowns } from './latent.ts';
-import type { Scales } from './scales.ts';
+import { sdOfGroup, type Scales } from './scales.ts';
 
 /**
  * Sd of a load's unknown: they alternate between heat and gloss.
@@ -38,8 +38,7 @@ export function loadsAt(
  * @returns per weight
  */
 export function sdsOf({ name, groupOf }: StageDesign, scales: Scales): number[] {
-  const { groups, residual } = scales[name];
-  return groupOf.map((g) => groups[g] ?? residual);
+  return groupOf.map((g) => sdOfGroup(scales[name], g));
 }
 
 /**

@@ -27,6 +27,14 @@ export interface ModelStamp {
   /** Tiles fitted. */
   readonly tiles: number;
   readonly archive: string;
+  /** What firing the answers are for, where the model knows that it matters. */
+  readonly usualFiring?: UsualFiring;
+}
+
+/** The middle cooling and the commonest atmosphere of the fitted tiles. */
+export interface UsualFiring {
+  readonly coolingCPerH?: number;
+  readonly atmosphere?: 'oxidation' | 'reduction';
 }
 
 /** The answer for one point at one cone. */

@@ -17,6 +17,7 @@ import type {
   Prediction,
   Predictions,
   SurfaceInterval90,
+  UsualFiring,
 } from './answers.ts';
 import {
   EDGE_STEPS,
@@ -101,10 +102,19 @@ export function judgedExperience(model: UnvalidatedModel): Experience {
  * What every answer says of the model it comes from.
  *
  * @param model - fitted model
- * @returns tiles fitted and the archive's fingerprint
+ * @returns tiles fitted, the archive's fingerprint and the firing that answers are for
  */
-export function modelStamp({ archive }: UnvalidatedModel): ModelStamp {
-  return { tiles: archive.counts.fitted, archive: archive.fingerprint };
+export function modelStamp({ archive, firingEffects = [] }: UnvalidatedModel): ModelStamp {
+  const usual = firingEffects.map((effect) =>
+    effect.column === 'cooling'
+      ? { coolingCPerH: effect.usualCPerH }
+      : { atmosphere: effect.usual },
+  );
+  return {
+    tiles: archive.counts.fitted,
+    archive: archive.fingerprint,
+    ...(usual.length > 0 && { usualFiring: Object.assign({}, ...usual) as UsualFiring }),
+  };
 }
 
 /**

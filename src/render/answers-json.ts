@@ -42,6 +42,7 @@ export function fitAnswer({ model, leftOut, writtenTo, doubts = [] }: FitOutcome
     gloss: stageAnswer(model.gloss),
     loadSpread: model.loadSpread,
     loads: model.loads,
+    firingEffects: model.firingEffects ?? [],
     logEvidence: model.logEvidence,
     validation: model.validation,
     faults: leftOut,

@@ -1,6 +1,6 @@
-import type { Boundaries, Boundary } from '../predict/answers.ts';
+import type { Boundaries, Boundary, ModelStamp } from '../predict/answers.ts';
 import { alignedLines, type Align } from './aligned.ts';
-import { cautionSection } from './answer-sections.ts';
+import { cautionSection, firingWords } from './answer-sections.ts';
 import { compositionWords } from './composition-words.ts';
 import { AXIS_WORDS, digitsAlong, moveSection } from './boundary-moves.ts';
 import { nearTileWords } from './cone-table.ts';
@@ -35,7 +35,7 @@ export function boundaryPage(answer: Boundaries, look: Look): string {
       ),
       moveSection(boundaries, look),
       { heading: 'Nearest tiles', lines: nearestLines(boundaries, look) },
-      { heading: 'How to read it', lines: readingLines(model.tiles, look) },
+      { heading: 'How to read it', lines: readingLines(model, look) },
       { heading: 'Notes', lines: notes.map((note) => point(note, look)) },
       cautionSection(look),
     ],
@@ -48,10 +48,11 @@ function introduction({ throughSource, through }: Boundaries): string {
   return `Lines through ${name}: ${compositionWords(through)}.`;
 }
 
-function readingLines(tiles: number, look: Look): string[] {
+function readingLines({ tiles, usualFiring }: ModelStamp, look: Look): string[] {
+  const firing = firingWords(usualFiring);
   const lines = [
     `From ${countOf(tiles, 'judged tile')}. Melt: underfired and melted are as likely as each other. ` +
-      'Gloss: of the melted, matte and gloss are.',
+      `Gloss: of the melted, matte and gloss are.${firing && ` For a load that truly reaches the cone${firing}.`}`,
     'Near: judged tiles within 3 steps of the place (a step is a change of one oxide worth a new ' +
       'tile) and half a cone of the heat. Archive: whether the place lies inside, at the edge or ' +
       'outside what was fired.',

@@ -4,7 +4,7 @@ import { alignedLines } from './aligned.ts';
 import { countsLine } from './counts-line.ts';
 import { fixed } from './figures.ts';
 import { heldOutSections } from './held-out-sections.ts';
-import { loadSection } from './load-sections.ts';
+import { firingSection, loadSection } from './load-sections.ts';
 import { INDENT, pageOf, point, type Look, type Section } from './page.ts';
 import { printable } from './printable.ts';
 import { countOf, grouped } from './sentences.ts';
@@ -38,6 +38,7 @@ export function fitPage(outcome: FitOutcome, look: Look): string {
       { lines: [wrapped(countsLine(model.archive.counts), look), ...fittedLines(model, look)] },
       ...(isNothingFitted(model) ? [] : heldOutSections(model.validation, detail, look)),
       loadSection(model, look),
+      firingSection(model.firingEffects ?? [], look),
       ...(detail
         ? [groupSection('Melting', model.melt, look), groupSection('Gloss', model.gloss, look)]
         : []),

@@ -1,4 +1,4 @@
-import type { LoadEffect, MeanAndSd, Model } from '../model/model.ts';
+import type { FiringEffect, LoadEffect, MeanAndSd, Model } from '../model/model.ts';
 import { fixed, signed } from './figures.ts';
 import { point, prose, type Look, type Section } from './page.ts';
 import { printable } from './printable.ts';
@@ -28,8 +28,8 @@ export function loadSection(
     `About two loads in three lie within ${fixed(loadSpread.offsetScaleCones, 2)} cone of their cone ` +
     'on paper. An error that all loads share cannot be seen.';
   const words = [
-    ...loads.filter(({ offsetCones }) => standsOut(offsetCones)).map(heatWords),
-    ...loads.filter(({ glossLogOdds }) => standsOut(glossLogOdds)).map(glossWords),
+    ...farthestFirst(loads, ({ offsetCones }) => offsetCones).map(heatWords),
+    ...farthestFirst(loads, ({ glossLogOdds }) => glossLogOdds).map(glossWords),
   ];
   if (words.length === 0) return { heading, lines: [prose(`None. ${spread}`, look)] };
   const chance = Math.max(1, Math.round(2 * CHANCE_SHARE * count));
@@ -42,8 +42,41 @@ export function loadSection(
   };
 }
 
+function farthestFirst(
+  loads: readonly LoadEffect[],
+  effect: (load: LoadEffect) => MeanAndSd,
+): LoadEffect[] {
+  const size = (load: LoadEffect) => Math.abs(effect(load).mean);
+  return loads.filter((load) => standsOut(effect(load))).sort((a, b) => size(b) - size(a));
+}
+
 function standsOut({ mean, sd }: MeanAndSd): boolean {
   return Math.abs(mean) > SDS_OF_90_PERCENT * sd;
+}
+
+/**
+ * What cooling and atmosphere do to gloss, for the page of `fit`.
+ *
+ * @param effects - of the model
+ * @param look - width and marking
+ * @returns one section; without lines where there is nothing to tell
+ */
+export function firingSection(effects: readonly FiringEffect[], look: Look): Section {
+  const lines = effects.map((effect) => {
+    const { mean, sd } = effect.gloss;
+    const half = SDS_OF_90_PERCENT * sd;
+    const [what, usual] =
+      effect.column === 'cooling'
+        ? ['cooling twice as fast', `cooling at ${fixed(effect.usualCPerH, 0)} °C/h`]
+        : [effect.usual === 'oxidation' ? 'reduction' : 'oxidation', effect.usual];
+    const side = standsOut(effect.gloss) ? '' : ' (may be nothing)';
+    return point(
+      `${what}: gloss log-odds ${signed(mean, 1)}, 90 % ${signed(mean - half, 1)} to ` +
+        `${signed(mean + half, 1)}${side}. Answers are for ${usual}.`,
+      look,
+    );
+  });
+  return { heading: 'Cooling and atmosphere', lines };
 }
 
 function heatWords({ load, tiles, offsetCones: { mean, sd } }: LoadEffect): string {

@@ -85,7 +85,7 @@ describe('the spread of the scales themselves', () => {
     const cellOf = (i: number, j: number) => covariance.get(i, j) / (sds[i] * sds[j]);
     for (let i = 0, at = 0; i < size; i++) for (let j = 0; j <= i; j++) unit[at++] = cellOf(i, j);
     const theta = Float64Array.from(mean, (w, j) => (w - means[j]) / sds[j]);
-    const widened = withScalesSpread(design, theta, Float64Array.from(unit));
+    const widened = withScalesSpread(design, scales, theta, Float64Array.from(unit));
     const exact = symmetricMatrix(unit, size);
     const step = 1e-4;
     let first = 0;
