@@ -1,6 +1,7 @@
 import * as z from 'zod';
 import { OXIDES, isOxide, type Oxide } from '../chemistry/oxides.ts';
 import { coneIndex } from '../firing/cone.ts';
+import { DIAGNOSTIC_KINDS } from './model.ts';
 
 /** Name and version of the model file. */
 export const MODEL_SCHEMA = 'coneshift.model/1';
@@ -211,5 +212,14 @@ export const modelShape = z.strictObject({
     byGlaze: heldOut,
     notes: z.array(text),
   }),
+  diagnostics: z.array(
+    z.strictObject({
+      kind: z.enum(DIAGNOSTIC_KINDS),
+      about: text,
+      value: number,
+      threshold: number,
+      text,
+    }),
+  ),
   notes: z.array(text),
 });

@@ -118,6 +118,30 @@ export interface Validation {
   readonly notes: readonly string[];
 }
 
+/** Something that puts a fit in doubt. */
+export interface Diagnostic {
+  readonly kind: DiagnosticKind;
+  /** The side, stage, cone, oxide or column that it is about. */
+  readonly about: string;
+  /** What was measured, and the bound that it does not keep. */
+  readonly value: number;
+  readonly threshold: number;
+  /** The same in words, with what to do. */
+  readonly text: string;
+}
+
+export type DiagnosticKind = (typeof DIAGNOSTIC_KINDS)[number];
+export const DIAGNOSTIC_KINDS = [
+  'heat hardly shows',
+  'few tiles',
+  'separated',
+  'cone without tiles',
+  'one cone',
+  'one load',
+  'oxide without a column',
+  'firing not recorded',
+] as const;
+
 /** A fitted model, with all that was read: commands on it need nothing else. */
 export interface Model {
   readonly schema: 'coneshift.model/1';
@@ -133,5 +157,7 @@ export interface Model {
   /** Laplace estimate of the log evidence at the re-estimated sds. */
   readonly logEvidence: number;
   readonly validation: Validation;
+  readonly diagnostics: readonly Diagnostic[];
+  /** The diagnostics in words, and what else is to be minded. */
   readonly notes: readonly string[];
 }

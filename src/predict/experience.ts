@@ -1,41 +1,11 @@
-import { OXIDES, type Oxide } from '../chemistry/oxides.ts';
+import { OXIDE_STEP } from '../chemistry/oxide-steps.ts';
+import { OXIDES } from '../chemistry/oxides.ts';
 import type { Unity } from '../chemistry/unity.ts';
 import type { Tile } from '../archive/archive.ts';
 import type { NearTile, Support } from './answers.ts';
 import { tileTree, type TileTree } from './tile-tree.ts';
 import { heatsInRadius, nearestTiles, tilesInRadius, type TreePlace } from './tree-search.ts';
 
-/**
- * One step of each oxide, mol per mol flux: a change that a potter would fire a new tile for. Every
- * oxide counts, also those the model has no column for. Common practice, no source: colourants and
- * opacifiers act in small amounts, silica in large ones.
- */
-const STEP: Readonly<Record<Oxide, number>> = {
-  SiO2: 0.5,
-  Al2O3: 0.08,
-  B2O3: 0.08,
-  Li2O: 0.05,
-  Na2O: 0.08,
-  K2O: 0.08,
-  MgO: 0.08,
-  CaO: 0.12,
-  SrO: 0.08,
-  BaO: 0.08,
-  ZnO: 0.05,
-  PbO: 0.05,
-  MnO: 0.05,
-  Fe2O3: 0.04,
-  TiO2: 0.04,
-  ZrO2: 0.04,
-  P2O5: 0.03,
-  SnO2: 0.03,
-  CoO: 0.02,
-  NiO: 0.02,
-  CuO: 0.03,
-  Cr2O3: 0.01,
-  V2O5: 0.02,
-  CeO2: 0.03,
-};
 /** Half a cone is a step: a tile one cone off then counts as at the edge, never as inside. */
 const CONES_PER_STEP = 0.5;
 
@@ -103,7 +73,7 @@ export function placeInSteps({ held }: Experience, unity: Unity): PlaceInSteps {
   let apart = 0;
   for (let j = 0; j < OXIDES.length; j++) {
     const oxide = OXIDES[j]!;
-    const step = (unity[oxide] ?? 0) / STEP[oxide];
+    const step = (unity[oxide] ?? 0) / OXIDE_STEP[oxide];
     if (held[steps.length] === j) steps.push(step);
     else apart += step * step;
   }
@@ -248,5 +218,5 @@ function nearTile({ tile, verdict, heat }: Tile, distance: number): NearTile {
 }
 
 function stepsOf(unity: Unity): number[] {
-  return OXIDES.map((oxide) => (unity[oxide] ?? 0) / STEP[oxide]);
+  return OXIDES.map((oxide) => (unity[oxide] ?? 0) / OXIDE_STEP[oxide]);
 }

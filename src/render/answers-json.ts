@@ -46,6 +46,7 @@ export function fitAnswer({ model, leftOut, writtenTo, doubts = [] }: FitOutcome
     logEvidence: model.logEvidence,
     validation: model.validation,
     faults: leftOut,
+    diagnostics: model.diagnostics,
     notes: [...doubts, ...fewTilesNote(model.validation), ...model.notes],
     writtenTo: writtenTo ?? null,
   };
