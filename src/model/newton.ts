@@ -54,12 +54,29 @@ export function maximum(problem: LatentProblem, start: Unknowns, tolerance: numb
   let step = exactStep(problem, unknowns);
   let iterations = 0;
   for (; iterations < MOST_ITERATIONS && step.decrement > tolerance; iterations++) {
-    const next = backtracked(problem, unknowns, step);
+    const next = advanced(problem, unknowns, step);
     if (next === undefined) break;
-    unknowns = next;
-    step = exactStep(problem, unknowns);
+    ({ unknowns, step } = next);
   }
   return { unknowns, step, iterations };
+}
+
+/** Below this decrement the full step nearly always gains. */
+const CLOSE_DECREMENT = 1;
+
+/** The point that the step leads to, and the step there, whose log density comes by the way. */
+function advanced(
+  problem: LatentProblem,
+  from: Unknowns,
+  step: NewtonStep,
+): Pick<Maximum, 'unknowns' | 'step'> | undefined {
+  if (step.decrement < CLOSE_DECREMENT) {
+    const unknowns = moved(from, step, 1);
+    const next = exactStep(problem, unknowns);
+    if (isGain(step, 1, next.logDensity)) return { unknowns, step: next };
+  }
+  const unknowns = backtracked(problem, from, step);
+  return unknowns && { unknowns, step: exactStep(problem, unknowns) };
 }
 
 function hasDoubts({ blocks }: LatentProblem): boolean {
@@ -94,16 +111,24 @@ export function backtracked(
   step: NewtonStep,
 ): Unknowns | undefined {
   for (let share = 1; share > 1e-12; share /= 2) {
-    const tried = {
-      ...from,
-      theta: from.theta.map((t, j) => t + share * step.theta[j]!),
-      loads: from.loads.map((u, k) => u + share * step.loads[k]!),
-    };
+    const tried = moved(from, step, share);
     if (step.decrement < FULL_STEP_DECREMENT) return tried;
-    const wanted = step.logDensity + 1e-4 * share * step.decrement;
-    if (logDensity(problem, tried) > wanted) return tried;
+    if (isGain(step, share, logDensity(problem, tried))) return tried;
   }
   return undefined;
+}
+
+function moved(from: Unknowns, step: NewtonStep, share: number): Unknowns {
+  return {
+    ...from,
+    theta: from.theta.map((t, j) => t + share * step.theta[j]!),
+    loads: from.loads.map((u, k) => u + share * step.loads[k]!),
+  };
+}
+
+/** Armijo's rule. */
+function isGain({ logDensity: before, decrement }: NewtonStep, share: number, after: number) {
+  return decrement < FULL_STEP_DECREMENT || after > before + 1e-4 * share * decrement;
 }
 
 /**
