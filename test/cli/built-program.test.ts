@@ -4,6 +4,7 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { afterAll, describe, expect, it } from 'vitest';
+import { checkPage, inventory, PLAIN_LOOK, readArchive } from '../../src/index.ts';
 
 // The built file, as a user starts it. `npm test` builds it first.
 const ROOT = fileURLToPath(new URL('../..', import.meta.url));
@@ -85,6 +86,19 @@ describe('the built program', () => {
     );
     const odd = start(['unity', DEMO], { env: { COLUMNS: 'wide' } }).stdout;
     expect(odd).toBe(start(['unity', DEMO]).stdout);
+  });
+
+  it('measures names of other scripts as the library does', () => {
+    const rows = ['5', '6', '6', '9'].map(
+      (cone, i) => `釉薬 ${i + 1} 🔥,é窯,${cone},3,0.4,0.1,0.7,0.3,gloss`,
+    );
+    const csv = `tile,firing,cone,SiO2,Al2O3,B2O3,CaO,K2O,surface\n${rows.join('\n')}\n`;
+    writeFileSync(join(folder, 'names.csv'), csv);
+    const { status, stdout } = start(['check', 'names.csv']);
+    const reading = readArchive(new Map([['names.csv', new TextEncoder().encode(csv)]]));
+    expect(stdout).toBe(checkPage(reading, inventory(reading.archive), PLAIN_LOOK));
+    expect(stdout).toMatch(/釉薬|窯/);
+    expect(status).toBe(0);
   });
 
   it('writes no terminal codes into a pipe, and honours NO_COLOR', () => {
