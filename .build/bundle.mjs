@@ -21,7 +21,7 @@ await build({
   chunkNames: 'part-[hash]',
   sourcemap: true,
   sourcesContent: false,
-  alias: { 'string-width': './bundle/later-string-width.cjs' },
+  alias: { 'string-width': './.build/later-string-width.cjs' },
   // It asks for its own file name, which a bundle has none of.
   external: ['write-file-atomic'],
   // Packages in the older form ask Node's modules by `require`.
