@@ -1,7 +1,6 @@
 import { addPairedProducts } from '../numeric/cross-products.ts';
 import { choleskyFactor, choleskySolve, dot } from '../numeric/linalg.ts';
 import {
-  LOAD_UNKNOWNS,
   logDensity,
   newtonSystem,
   type LatentProblem,
@@ -164,13 +163,9 @@ function solvedStep(system: NewtonSystem): NewtonStep | undefined {
   const width = gradient.length;
   const loadInverse = inverseBlocks(system.loadPrecision);
   if (loadInverse === undefined) return undefined;
-  const pulled = pulledCoupling(coupling, loadInverse, width);
-  const reduced = eliminated(precision, pulled, coupling, width);
   const right = Float64Array.from(gradient);
-  for (let row = 0; row < loadGradient.length; row++) {
-    const pull = loadGradient[row]!;
-    for (let j = 0, at = row * width; j < width; j++, at++) right[j]! -= pull * pulled[at]!;
-  }
+  const pulled = pulledCoupling(system, loadInverse, right);
+  const reduced = eliminated(precision, pulled, coupling, width);
   const factor = positiveFactor(reduced, width);
   if (factor === undefined) return undefined;
   const theta = choleskySolve(factor, right);
@@ -217,21 +212,27 @@ function inverseBlocks(blocks: Float64Array): Float64Array | undefined {
   return inverse;
 }
 
+/** Each load's inverse block times its coupling; its pull is taken off the weights' gradient. */
 function pulledCoupling(
-  coupling: Float64Array,
+  { coupling, loadGradient, gradient: { length: width } }: NewtonSystem,
   inverse: Float64Array,
-  width: number,
+  gradient: Float64Array,
 ): Float64Array {
   const pulled = new Float64Array(coupling.length);
-  for (let at = 0, block = 0; at < coupling.length; at += LOAD_UNKNOWNS * width, block += 3) {
-    const a = inverse[block]!;
-    const b = inverse[block + 1]!;
-    const c = inverse[block + 2]!;
-    for (let j = at; j < at + width; j++) {
-      const one = coupling[j]!;
-      const two = coupling[j + width]!;
-      pulled[j] = a * one + b * two;
-      pulled[j + width] = b * one + c * two;
+  for (let l = 0, at = 0; 2 * l < loadGradient.length; l++, at += width) {
+    const a = inverse[3 * l]!;
+    const b = inverse[3 * l + 1]!;
+    const c = inverse[3 * l + 2]!;
+    const pullOne = loadGradient[2 * l]!;
+    const pullTwo = loadGradient[2 * l + 1]!;
+    for (let j = 0; j < width; j++, at++) {
+      const one = coupling[at]!;
+      const two = coupling[at + width]!;
+      const pulledOne = a * one + b * two;
+      const pulledTwo = b * one + c * two;
+      pulled[at] = pulledOne;
+      pulled[at + width] = pulledTwo;
+      gradient[j]! -= pullOne * pulledOne + pullTwo * pulledTwo;
     }
   }
   return pulled;
