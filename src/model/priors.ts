@@ -40,13 +40,13 @@ export const MELT_PRIOR: StagePrior = {
   startResidualSd: 0.8,
   groups: [
     { name: 'intercept', startSd: 2, means: { '1': 3 } },
-    { name: 'silica and alumina', startSd: 1, means: { SiO2: -2, Al2O3: -1 } },
+    { name: 'silica and alumina', startSd: 1, means: { SiO2: -2, Al2O3: -0.5 } },
     { name: 'fluxes', startSd: 0.7, means: { B2O3: 1.5, KNaO: 0.7, MgO: -0.3, ZnO: 0 } },
     { name: 'heat', startSd: 0.6, means: { heat: 1.7 } },
     {
       name: 'curvature',
       startSd: 0.4,
-      means: { 'SiO2^2': -0.5, 'Al2O3^2': -1.2, 'SiO2*Al2O3': 0.5, ratio: 0, 'ratio^2': 0 },
+      means: { 'SiO2^2': -0.5, 'Al2O3^2': -0.8, 'SiO2*Al2O3': 0.5, ratio: 0, 'ratio^2': 0 },
     },
     {
       name: 'interactions',
