@@ -101,8 +101,8 @@ describe('published verdicts, whole series left out', () => {
     {
       source: 'lauth',
       what: 'porcelain glazes of Lauth & Dutailly 1888',
-      now: 0.863,
-      interval: [0.75, 0.95],
+      now: 0.839,
+      interval: [0.72, 0.94],
     },
   ])('ranks the $what with an area of at least 0.75: $now', ({ source, now, interval }) => {
     const area = areaUnderRoc(of(source));
