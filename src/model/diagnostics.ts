@@ -1,3 +1,4 @@
+import { shortened } from '../archive/odd-words.ts';
 import { OXIDE_STEP } from '../chemistry/oxide-steps.ts';
 import { OXIDES, type Oxide } from '../chemistry/oxides.ts';
 import { coneText } from '../firing/cone.ts';
@@ -18,6 +19,10 @@ const MAIN_CONES = [5, 6, 7];
 const NEAR_CONE = 0.5;
 /** A smaller fall of a probability is not seen on any page. */
 const SEEN_FALL = 0.001;
+/** Over a quarter of a cone chance hardly brings about so large a fall. */
+const CONTRARY_FALL = 0.05;
+/** Of fewer tiles on a side it is no wonder that they stand clear. */
+const TELLING_SIDE = 3;
 /** An oxide in fewer of the tiles hardly bears on the whole. */
 const COMMON_SHARE = 0.1;
 /** Oxides that some column of the model stands for; lime is what is left of the fluxes. */
@@ -73,7 +78,10 @@ function nothingLearnt(): Diagnostic {
 function fallingHeat({ heatBefore, heatAfter }: RisingFit): Diagnostic[] {
   const said = (check: HeatCheck) =>
     `for ${check.falling} of ${check.glazes} fitted glazes, by up to ${check.worst.toFixed(3)} over a quarter of a cone`;
-  const advice = 'heat hardly shows in these tiles; fire some of these glazes at another cone';
+  const advice =
+    heatBefore.worst >= CONTRARY_FALL
+      ? 'hotter tiles came out less melted; look whether cones, firings or verdicts are mixed up'
+      : 'heat hardly shows in these tiles; fire some of these glazes at another cone';
   const told = { kind: 'heat hardly shows', about: 'melt', threshold: SEEN_FALL } as const;
   if (heatAfter.worst >= SEEN_FALL) {
     const text = `the chance to melt falls with more heat ${said(heatAfter)}: ${advice}`;
@@ -120,13 +128,15 @@ function separatedStages({ design, fit }: RisingFit): Diagnostic[] {
   return STAGES.flatMap((name, s) => {
     const stage = design.stages[s]!;
     const logOdds = blockLogOdds(blocks[s]!, s * design.stages[0]!.size, unknowns);
+    const yesTiles = stage.tiles.filter((_, i) => stage.outcome[i] === 1).length;
+    if (Math.min(yesTiles, stage.tiles.length - yesTiles) < TELLING_SIDE) return [];
     let [leastYes, mostNo] = [Infinity, -Infinity];
     stage.tiles.forEach((_, i) => {
       if (stage.outcome[i] === 1) leastYes = Math.min(leastYes, logOdds[i]!);
       else mostNo = Math.max(mostNo, logOdds[i]!);
     });
     const gap = leastYes - mostNo;
-    if (!(gap > 0 && gap < Infinity)) return [];
+    if (!(gap > 0)) return [];
     const [yes, no] = SIDES[name];
     const text =
       `every ${yes} tile stands clear of every ${no} one (by ${gap.toFixed(1)} log-odds, more than 0): how sharp that ` +
@@ -159,16 +169,21 @@ function oneCone(tiles: readonly JudgedTile[]): Diagnostic {
 
 /** Where a cone was fired once, an error of that load and what the cone does look the same. */
 function conesOfOneLoad(tiles: readonly JudgedTile[]): Diagnostic[] {
-  return foldsByCone(tiles).flatMap(({ leftOut, tiles: own }) => {
+  const once = foldsByCone(tiles).flatMap(({ leftOut, tiles: own }) => {
     const loads = new Set(own.map(({ load }) => load));
     const [first] = own;
     if (loads.size > 1 || first?.firing === undefined) return [];
-    const cone = coneText(Number(leftOut));
-    const text =
-      `all judged tiles of cone ${cone} are of one load (${first.firing}): its own error and what the cone does ` +
-      'cannot be told apart; fire another load there';
-    return [{ kind: 'one load', about: cone, value: 1, threshold: 2, text }];
+    return [{ cone: coneText(Number(leftOut)), firing: first.firing }];
   });
+  if (once.length === 0) return [];
+  const named = shortened(once.map(({ cone, firing }) => `${cone} (${firing})`));
+  const [cones, are] =
+    once.length === 1 ? ['cone', 'are of one load'] : ['cones', 'are of one load each'];
+  const text =
+    `all judged tiles of ${cones} ${named} ${are}: its own error and what the cone does ` +
+    'cannot be told apart; fire another load there';
+  const about = once.map(({ cone }) => cone).join(', ');
+  return [{ kind: 'one load', about, value: once.length, threshold: 0, text }];
 }
 
 /** Oxides that matter to a tile by a step or more, and that no column of the model stands for. */

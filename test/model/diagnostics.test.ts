@@ -109,11 +109,27 @@ describe('other doubts, each with its number, threshold and advice', () => {
     expect(found(one, 'cone without tiles').map(({ about }) => about)).toEqual(['5', '7']);
     expect(found(one, 'one cone')).toHaveLength(1);
     const some = many.filter(({ heat, firing }) => heat?.cone !== '7' || firing === 'L3');
-    const [only] = found(fitModel(anArchive(some)), 'one load').filter(
-      ({ about }) => about === '7',
-    );
-    expect(only.text).toContain('(L3)');
+    const [only, ...others] = found(fitModel(anArchive(some)), 'one load');
+    expect(others).toEqual([]);
+    expect([only.about, only.value]).toEqual(['5, 7', 2]);
+    expect(only.text).toContain('of cones 5 (L0) and 7 (L3) are of one load each');
     expect(only.text).toContain('fire another load there');
+  });
+
+  it('hotter tiles that came out less melted, not to be taken for heat that hardly shows', () => {
+    const told = (truth: (cone: number) => number) => {
+      const tiles = inventedTiles({
+        tiles: 120,
+        seed: 33,
+        truth: {
+          melt: ({ SiO2 = 0 }, cone) => -2 * (SiO2 - 3.2) + truth(cone),
+          gloss: () => 2,
+        },
+      });
+      return found(fitModel(anArchive(tiles)), 'heat hardly shows').map(({ text }) => text);
+    };
+    expect(told((cone) => -3 * (cone - 6))[0]).toContain('cones, firings or verdicts are mixed up');
+    expect(told((cone) => 1.5 * (cone - 6))).toEqual([]);
   });
 
   it('an oxide that many tiles hold and no column stands for', () => {

@@ -79,7 +79,9 @@ describe('notes of a fit', () => {
     const loadsOf7 = new Set(single.filter(({ heat }) => heat!.coneIndex === 7).map((t) => t.load));
     expect(loadsOf7.size).toBe(1);
     const [load] = loadsOf7;
-    expect(notesOf(single)).toContain(`all judged tiles of cone 7 are of one load (${load})`);
+    expect(notesOf(single)).toContain(
+      `all judged tiles of cones 5 (L0) and 7 (${load}) are of one load each`,
+    );
     const unnamed = single.map(({ firing, ...tile }) => ({
       ...tile,
       load: `${tile.tile} ${firing}`,
