@@ -1,3 +1,4 @@
+import { quoted } from '../archive/found-text.ts';
 import { shortened } from '../archive/odd-words.ts';
 import { OXIDE_STEP } from '../chemistry/oxide-steps.ts';
 import { OXIDES, type Oxide } from '../chemistry/oxides.ts';
@@ -21,6 +22,8 @@ const NEAR_CONE = 0.5;
 const SEEN_FALL = 0.001;
 /** Over a quarter of a cone chance hardly brings about so large a fall. */
 const CONTRARY_FALL = 0.05;
+/** In sds. Usual are 0.3 to 1, whatever the archive. */
+const DOUBTFUL_SHIFT = 2;
 /** Of fewer tiles on a side it is no wonder that they stand clear. */
 const TELLING_SIDE = 3;
 /** An oxide in fewer of the tiles hardly bears on the whole. */
@@ -58,6 +61,7 @@ export function diagnostics({ tiles, fit, firingEffects, validation }: Examined)
     ...fallingHeat(fit),
     ...fewTiles(tiles),
     ...separatedStages(fit),
+    ...doubtfulApproximation(fit),
     ...unseenCones(tiles),
     ...(validation.byCone.folds === 0 ? [oneCone(tiles)] : conesOfOneLoad(tiles)),
     ...oxidesWithoutColumn(tiles),
@@ -143,6 +147,23 @@ function separatedStages({ design, fit }: RisingFit): Diagnostic[] {
       'boundary is, and where between them it runs, rests on what is usual elsewhere; fire tiles between them';
     return [{ kind: 'separated', about: name, value: gap, threshold: 0, text }];
   });
+}
+
+/**
+ * Where the log-odds of a verdict stand two sds apart at the mode and at the centre, what the tiles leave open there has
+ * two sides: the verdict is wrong, or its neighbours mislead.
+ */
+function doubtfulApproximation({ design, fit: { modeShift } }: RisingFit): Diagnostic[] {
+  const { sds, stage, row } = modeShift;
+  if (sds < DOUBTFUL_SHIFT) return [];
+  const { tile } = design.stages[stage]!.tiles[row]!;
+  const text =
+    `what the tiles say near ${quoted(tile)} is far from Gaussian (its log-odds move by ${sds.toFixed(1)} sds, ` +
+    `${DOUBTFUL_SHIFT} or more, from the likeliest to the middle): that verdict or its neighbours' may be wrong; look at ` +
+    'them again, and fire that glaze once more';
+  return [
+    { kind: 'approximation doubtful', about: tile, value: sds, threshold: DOUBTFUL_SHIFT, text },
+  ];
 }
 
 function unseenCones(tiles: readonly JudgedTile[]): Diagnostic[] {

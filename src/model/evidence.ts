@@ -6,6 +6,7 @@ import { blockLogOdds, type LatentProblem, type Unknowns } from './latent.ts';
 import { laplaceEvidence } from './logistic.ts';
 import { backtracked, exactStep, maximum, newtonStep, type NewtonStep } from './newton.ts';
 import { posteriorSpread, rowSds, type PosteriorSpread } from './spread.ts';
+import { largestShift, type ModeShift } from './mode-shift.ts';
 import { LOAD_PRIOR, WRONG_VERDICTS } from './priors.ts';
 import {
   carriedOn,
@@ -38,6 +39,11 @@ export interface EvidenceFit {
   readonly logEvidence: number;
   /** Rounds of re-estimation. */
   readonly rounds: number;
+  /**
+   * How far the posterior is from a Gaussian: by how many of its sds the log-odds of a verdict moves, at most,
+   * from the mode to the centre of the Gaussian nearest to the posterior; and of which verdict.
+   */
+  readonly modeShift: ModeShift;
   /** Largest entry of the gradient at the answer, in units of the prior. */
   readonly gradientNorm: number;
 }
@@ -170,6 +176,7 @@ function averagedFit(
     logEvidence: laplaceEvidence(mode.step),
     rounds,
     gradientNorm: centre.step.gradientNorm,
+    modeShift: largestShift(problem, mode.unknowns, centre.unknowns, sds),
   };
 }
 

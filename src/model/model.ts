@@ -135,6 +135,7 @@ export const DIAGNOSTIC_KINDS = [
   'heat hardly shows',
   'few tiles',
   'separated',
+  'approximation doubtful',
   'cone without tiles',
   'one cone',
   'one load',

@@ -7,6 +7,7 @@ import { parseModel, modelText } from '../../src/model/model-file.ts';
 import { predict } from '../../src/predict/predict.ts';
 import { fitAnswer } from '../../src/render/answers-json.ts';
 import { seededGenerator } from '../../src/numeric/random.ts';
+import { drawStudio } from '../bench/studios/studio.ts';
 import { aHeat, anArchive, aTile } from '../support/builders.ts';
 import { drawnUnity, inventedTiles } from '../support/invented-tiles.ts';
 
@@ -101,6 +102,19 @@ describe('other doubts, each with its number, threshold and advice', () => {
     expect(separated[0].value).toBeGreaterThan(separated[0].threshold);
     expect(separated[0].text).toContain('every melted tile stands clear of every underfired one');
     expect(found(fitModel(anArchive(many)), 'separated')).toEqual([]);
+  });
+
+  it('a verdict that its neighbours contradict so far that two answers are left open', () => {
+    const { archive } = drawStudio({ family: 'planes', seed: 507, size: 1000 });
+    const [doubt, ...others] = found(fitModel(archive), 'approximation doubtful');
+    expect(others).toEqual([]);
+    expect(doubt.value).toBeGreaterThan(doubt.threshold);
+    expect(archive.tiles.map(({ tile }) => tile)).toContain(doubt.about);
+    expect(doubt.text).toContain(`near "${doubt.about}" is far from Gaussian`);
+    for (const seed of [508, 509]) {
+      const usual = drawStudio({ family: 'planes', seed, size: 300 }).archive;
+      expect(found(fitModel(usual), 'approximation doubtful')).toEqual([]);
+    }
   });
 
   it('cones without tiles, one cone alone, a cone of one load', () => {
