@@ -1,12 +1,13 @@
 import { quoted } from '../archive/found-text.ts';
 import { shortened } from '../archive/odd-words.ts';
 import { OXIDE_STEP } from '../chemistry/oxide-steps.ts';
-import { OXIDES, type Oxide } from '../chemistry/oxides.ts';
+import { OXIDES } from '../chemistry/oxides.ts';
 import { coneText } from '../firing/cone.ts';
 import { problemAt, STAGES, type StageName } from './design.ts';
 import { foldsByCone } from './folds.ts';
 import type { HeatCheck } from './heat-check.ts';
 import type { JudgedTile } from './judged.ts';
+import { hasColumn } from './inputs.ts';
 import { blockLogOdds } from './latent.ts';
 import type { Diagnostic, FiringEffect, Validation } from './model.ts';
 import type { RisingFit } from './stages.ts';
@@ -28,19 +29,6 @@ const DOUBTFUL_SHIFT = 2;
 const TELLING_SIDE = 3;
 /** An oxide in fewer of the tiles hardly bears on the whole. */
 const COMMON_SHARE = 0.1;
-/** Oxides that some column of the model stands for; lime is what is left of the fluxes. */
-const IN_COLUMNS: readonly Oxide[] = [
-  'SiO2',
-  'Al2O3',
-  'B2O3',
-  'Li2O',
-  'Na2O',
-  'K2O',
-  'MgO',
-  'CaO',
-  'ZnO',
-];
-
 /** What a fit is examined with. */
 export interface Examined {
   readonly tiles: readonly JudgedTile[];
@@ -209,7 +197,7 @@ function conesOfOneLoad(tiles: readonly JudgedTile[]): Diagnostic[] {
 
 /** Oxides that matter to a tile by a step or more, and that no column of the model stands for. */
 function oxidesWithoutColumn(tiles: readonly JudgedTile[]): Diagnostic[] {
-  const counts = OXIDES.filter((oxide) => !IN_COLUMNS.includes(oxide))
+  const counts = OXIDES.filter((oxide) => !hasColumn(oxide))
     .map((oxide) => ({
       oxide,
       count: tiles.filter(({ unity }) => (unity[oxide] ?? 0) >= OXIDE_STEP[oxide]).length,

@@ -1,3 +1,4 @@
+import type { Oxide } from '../chemistry/oxides.ts';
 import { alkaliShare, type Unity } from '../chemistry/unity.ts';
 
 /** The model's inputs, each centred and scaled by fixed physical constants. */
@@ -156,4 +157,30 @@ function takenApart(column: string): readonly (keyof Inputs)[] {
     if (!Object.hasOwn(SCALE, name)) throw new RangeError(`column ${column} names no input`);
     return name as keyof Inputs;
   });
+}
+
+/** Lime is what is left of the fluxes. */
+const IN_COLUMNS: readonly Oxide[] = [
+  'SiO2',
+  'Al2O3',
+  'B2O3',
+  'Li2O',
+  'Na2O',
+  'K2O',
+  'MgO',
+  'CaO',
+  'ZnO',
+];
+
+/**
+ * Whether some column of the model stands for an oxide.
+ *
+ * @param oxide - its formula
+ * @returns false where only its share among the fluxes counts, if it is one
+ * @example
+ * hasColumn('K2O'); // true
+ * hasColumn('Fe2O3'); // false
+ */
+export function hasColumn(oxide: Oxide): boolean {
+  return IN_COLUMNS.includes(oxide);
 }

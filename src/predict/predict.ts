@@ -1,6 +1,10 @@
 import type { UnvalidatedModel } from '../model/fit.ts';
 import { hazardNotes } from '../chemistry/hazards.ts';
+import { OXIDE_STEP } from '../chemistry/oxide-steps.ts';
+import { OXIDES } from '../chemistry/oxides.ts';
+import type { Unity } from '../chemistry/unity.ts';
 import { coneText } from '../firing/cone.ts';
+import { hasColumn } from '../model/inputs.ts';
 import { stageLogOdds, surfaceProbability } from '../model/log-odds.ts';
 import { SURFACES, type Surface, type SurfaceProbability } from '../model/model.ts';
 import { isJudged } from '../model/stages.ts';
@@ -133,7 +137,7 @@ export function coneAnswers(
   coneIndexes: readonly number[],
 ): ConeAnswer[] {
   const place = placeInSteps(experience, unity);
-  const hazards = hazardNotes(unity);
+  const hazards = [...unmodelledNotes(unity), ...hazardNotes(unity)];
   return coneIndexes.map((coneIndex) => {
     const melt = stageLogOdds(model.melt, unity, coneIndex);
     const gloss = stageLogOdds(model.gloss, unity, coneIndex);
@@ -199,6 +203,17 @@ function supportNotes({ support, tilesWithinEdge }: Surroundings): string[] {
   return support === 'edge'
     ? [`at the edge of the archive (${within}, too few of them close): fire a tile first`]
     : [`outside the archive (${within}): carried over from tiles farther off`];
+}
+
+/** Oxides of the glaze asked about that matter by a step or more, and that no column stands for. */
+function unmodelledNotes(unity: Unity): string[] {
+  const held = OXIDES.filter(
+    (oxide) => !hasColumn(oxide) && (unity[oxide] ?? 0) >= OXIDE_STEP[oxide],
+  );
+  if (held.length === 0) return [];
+  return [
+    `holds ${held.join(', ')}: what ${held.length === 1 ? 'it does' : 'they do'} is not in these chances`,
+  ];
 }
 
 /** Half a per cent: less is not seen on a page. */

@@ -89,6 +89,16 @@ describe('predict', () => {
     expect(notes(6)).not.toMatch(/hotter|cooler/);
   });
 
+  it('says of an oxide that no column stands for that the chances leave it out', () => {
+    const iron = { point: 'iron', unity: { ...points[0].unity, Fe2O3: 0.06, TiO2: 0.01 } };
+    const [with_, without] = [iron, points[0]].map(
+      (one) => predict(model, [one], [6]).predictions[0],
+    );
+    expect(with_.notes).toContain('holds Fe2O3: what it does is not in these chances');
+    expect(with_.probability).toEqual(without.probability);
+    expect(without.notes.join()).not.toContain('not in these chances');
+  });
+
   it('names the metals of a glaze that holds them', () => {
     const point = { point: 'blue', unity: { ...points[0].unity, CoO: 0.01 } };
     expect(predict(model, [point], [6]).predictions[0].notes.join('\n')).toContain('cobalt');
